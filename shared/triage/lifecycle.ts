@@ -1,0 +1,34 @@
+export const flagStates = ['open', 'claimed', 'closed'] as const;
+export type FlagState = (typeof flagStates)[number];
+export type FlagMove = 'claim' | 'release' | 'close';
+
+/** Nothing closes by itself, and a closed flag stays closed: a later finding is a flag of its own. */
+const MOVES = {
+  open: { claim: 'claimed', close: 'closed' },
+  claimed: { release: 'open', close: 'closed' },
+  closed: {},
+} satisfies Record<FlagState, Partial<Record<FlagMove, FlagState>>>;
+
+/** The state a move leads to, or null where that move does not exist. */
+export const afterMove = (state: FlagState, move: FlagMove): FlagState | null => {
+  const moves: Partial<Record<FlagMove, FlagState>> = MOVES[state];
+  return moves[move] ?? null;
+};
+
+export const outcomes = [
+  'advised-by-phone',
+  'advised-by-message',
+  'visit-brought-forward',
+  'surgeons-office-informed',
+  'emergency-services',
+  'plan-changed',
+  'no-action-needed',
+  'entered-by-mistake',
+] as const;
+export type Outcome = (typeof outcomes)[number];
+
+/** Outcomes that mean nothing without a few words, and what those words must say. */
+export const outcomeNeeds: Partial<Record<Outcome, string>> = {
+  'surgeons-office-informed': 'Name the person you spoke to.',
+  'no-action-needed': 'Say why no action is needed.',
+};
