@@ -1,0 +1,124 @@
+import type { IncomingMessage, Server as HttpServer } from 'node:http';
+import type { RequestHandler } from 'express';
+import type { Logger } from 'pino';
+import { Server, type Socket } from 'socket.io';
+import { isClinician } from '#shared/access/permissions.ts';
+import { hintEvent, sessionEndedEvent, type Hint } from '#shared/realtime/hints.ts';
+import type { Identity } from '../app.ts';
+import type { Pools } from '../db/pools.ts';
+import { withTx } from '../db/with-tx.ts';
+import { loadPersonActor } from '../features/accounts/queries.ts';
+import { liveSession } from '../http/sessions.ts';
+import type { Announcement, Audience } from './announce.ts';
+
+const rooms = {
+  session: (id: string) => `session:${id}`,
+  person: (id: string) => `person:${id}`,
+  clinicians: (clinicId: string) => `clinicians:${clinicId}`,
+};
+
+const roomFor = (to: Audience): string =>
+  'person' in to ? rooms.person(to.person) : rooms.clinicians(to.clinicians);
+
+type SocketData = { sessionId: string };
+type ServerEvents = { [hintEvent]: (hint: Hint) => void; [sessionEndedEvent]: () => void };
+type Sockets = Server<Record<string, never>, ServerEvents, Record<string, never>, SocketData>;
+
+/** Sessions end by themselves too; open sockets are looked at this often. */
+const revalidateEveryMs = 10_000;
+
+/** Runs Express middleware on the handshake alone; later packets of the same connection carry a `sid`. */
+const onHandshake =
+  (middleware: RequestHandler) =>
+  (
+    req: IncomingMessage & { _query?: Record<string, string> },
+    res: unknown,
+    next: (error?: unknown) => void,
+  ): void => {
+    if (req._query?.sid === undefined) middleware(req as never, res as never, next);
+    else next();
+  };
+
+/** Socket.IO over the same sessions as HTTP. It carries hints to this web's own sockets and takes no orders. */
+export const openSockets = (
+  server: HttpServer,
+  {
+    pools,
+    clock,
+    publicUrl,
+    identity,
+    log,
+  }: { pools: Pools; clock: () => Date; publicUrl: string; identity: Identity; log: Logger },
+) => {
+  const { origin } = new URL(publicUrl);
+  const io: Sockets = new Server(server, {
+    serveClient: false,
+    allowRequest: (req, decide) =>
+      decide(null, req.headers.origin === undefined || req.headers.origin === origin),
+  });
+  for (const middleware of [identity.session, identity.initialize, identity.restore]) {
+    io.engine.use(onHandshake(middleware));
+  }
+
+  io.use((socket, next) => {
+    const session = (socket.request as IncomingMessage & { user?: Express.User }).user?.session;
+    if (!session) {
+      next(new Error('not-signed-in'));
+      return;
+    }
+    const person = { kind: 'person', clinicId: session.clinicId, personId: session.personId } as const;
+    withTx(pools.app, person, (tx) => loadPersonActor(tx, person)).then(
+      async (actor) => {
+        if (!actor) return next(new Error('not-signed-in'));
+        socket.data.sessionId = session.sessionId;
+        await socket.join([rooms.session(session.sessionId), rooms.person(actor.personId)]);
+        if (isClinician(actor.roles)) await socket.join(rooms.clinicians(actor.clinicId));
+        next();
+      },
+      () => next(new Error('unavailable')),
+    );
+  });
+
+  // A session may have ended between the handshake and the join; nothing that was revoked stays connected.
+  io.on('connection', (socket) => void endIfDead(socket));
+
+  const end = (socket: Pick<Socket<Record<string, never>, ServerEvents>, 'emit' | 'disconnect'>): void => {
+    socket.emit(sessionEndedEvent);
+    socket.disconnect(true);
+  };
+
+  const endIfDead = async (
+    socket: Socket<Record<string, never>, ServerEvents, Record<string, never>, SocketData>,
+  ) => {
+    try {
+      if (!(await liveSession(pools.gate, socket.data.sessionId, clock()))) end(socket);
+    } catch (error) {
+      log.warn({ err: error }, 'a socket could not be checked against its session; it is closed');
+      socket.disconnect(true);
+    }
+  };
+
+  const revalidation = setInterval(() => {
+    for (const socket of io.sockets.sockets.values()) void endIfDead(socket);
+  }, revalidateEveryMs);
+
+  return {
+    deliver: (announcement: Announcement): void => {
+      if ('endedSession' in announcement) {
+        for (const [, socket] of io.sockets.sockets) {
+          if (socket.data.sessionId === announcement.endedSession) end(socket);
+        }
+        return;
+      }
+      io.local.to(roomFor(announcement.to)).emit(hintEvent, announcement.hint);
+    },
+    /** Hints may have been missed: every client fetches what it shows again. */
+    deliverGap: (): void => {
+      io.local.emit(hintEvent, { topic: 'everything' });
+    },
+    close: async (): Promise<void> => {
+      clearInterval(revalidation);
+      await io.close();
+    },
+  };
+};

@@ -1,0 +1,17 @@
+import type { Route } from './http/route.ts';
+import { accountRoutes } from './features/accounts/routes.ts';
+import { checkInRoutes } from './features/check-ins/routes.ts';
+import { clinicRoutes } from './features/clinic/routes.ts';
+import { planRoutes } from './features/plans/routes.ts';
+import { threadRoutes } from './features/threads/routes.ts';
+import { triageRoutes } from './features/triage/routes.ts';
+
+/** Every route of the API. What lies outside the clinics' fence is handed in. */
+export const allRoutes = (lastBeat: () => Promise<Date | null>): Route[] => [
+  ...accountRoutes,
+  ...clinicRoutes(lastBeat),
+  ...planRoutes,
+  ...checkInRoutes,
+  ...triageRoutes,
+  ...threadRoutes,
+];
