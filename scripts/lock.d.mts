@@ -1,0 +1,1 @@
+export function lock(path: string, whileWaiting: (holder: number) => void): Promise<() => void>;

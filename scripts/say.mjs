@@ -1,0 +1,16 @@
+/** A failure that the reader can act on: shown as its sentence alone, without a stack. */
+export class Stop extends Error {}
+
+export function say(line) {
+  process.stdout.write(`${line}\n`);
+}
+
+/** Runs an entry script: a Stop ends it with its sentence, anything else with its stack, both with code 1. */
+export async function main(run) {
+  try {
+    await run();
+  } catch (error) {
+    process.stderr.write(`${error instanceof Stop ? error.message : error.stack}\n`);
+    process.exitCode = 1;
+  }
+}

@@ -1,0 +1,1 @@
+export function joinTestCluster(): Promise<{ superUrl: string; leave: () => Promise<void> }>;
