@@ -1,0 +1,58 @@
+import { ListChecks, MessageSquare, Sprout } from 'lucide-react';
+import { useTranslation } from 'react-i18next';
+import { Link, Outlet } from 'react-router-dom';
+import { BottomBar } from '#src/components/BottomBar.tsx';
+import { BottomDock } from '#src/components/BottomDock.tsx';
+import { EmergencyLine } from '#src/components/EmergencyLine.tsx';
+import { Mark } from '#src/components/Mark.tsx';
+import { SkipLink } from '#src/components/SkipLink.tsx';
+import type { NavigationItem } from '#src/components/navigation.ts';
+import { useUnseenMessages } from '#src/features/plans/queries.ts';
+import { telephoneHref } from '#src/lib/format.ts';
+import { useMe } from '../session.tsx';
+import { PatientMenu } from './PatientMenu.tsx';
+import { SideNavigation } from './SideNavigation.tsx';
+
+const mainId = 'main';
+
+/** Around the patient's places: the bar at the top, the places, and the emergency line at all times. */
+export function PatientShell() {
+  const { t } = useTranslation();
+  const { clinic } = useMe();
+  const unseen = useUnseenMessages();
+  const places: NavigationItem[] = [
+    { to: '/today', label: t('nav.today'), icon: Sprout },
+    { to: '/plan', label: t('nav.plan'), icon: ListChecks },
+    {
+      to: '/messages',
+      label: t('nav.messages'),
+      icon: MessageSquare,
+      badge: { count: unseen, label: t('nav.unseen', { count: unseen }) },
+    },
+  ];
+  return (
+    <div className="base-large flex min-h-dvh flex-col">
+      <SkipLink targetId={mainId} label={t('skip')} />
+      <header className="mx-auto flex w-full max-w-5xl items-center justify-between gap-3 px-5 pt-3 print:hidden">
+        <Link to="/today" className="inline-flex min-h-target min-w-0 items-center">
+          <Mark />
+        </Link>
+        <PatientMenu />
+      </header>
+      <div className="mx-auto grid w-full max-w-5xl grow content-start lg:grid-cols-[13rem_minmax(0,1fr)]">
+        <SideNavigation label={t('places')} items={places} />
+        <main id={mainId} tabIndex={-1} className="w-full max-w-3xl min-w-0 px-5 pt-3 pb-10">
+          <Outlet />
+        </main>
+      </div>
+      <BottomDock>
+        <EmergencyLine label={t('emergency.label')} href={telephoneHref(clinic.emergencyNumber)}>
+          {t('emergency.line', { number: clinic.emergencyNumber })}
+        </EmergencyLine>
+        <div className="lg:hidden">
+          <BottomBar label={t('places')} items={places} />
+        </div>
+      </BottomDock>
+    </div>
+  );
+}

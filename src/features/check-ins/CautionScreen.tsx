@@ -1,0 +1,169 @@
+import { HeartHandshake, Phone } from 'lucide-react';
+import { useEffect, useRef } from 'react';
+import { Trans, useTranslation } from 'react-i18next';
+import type { ClinicCard } from '#shared/clinic/contract.ts';
+import type { Finding } from '#shared/red-flags/findings.ts';
+import { patientTextOf } from '#shared/red-flags/patient-text.ts';
+import { useHoldScreen } from '#src/app/caution-hold.ts';
+import { Button } from '#src/components/Button.tsx';
+import { LinkButton } from '#src/components/LinkButton.tsx';
+import { SignShape } from '#src/components/SignShape.tsx';
+import { classNames } from '#src/components/class-names.ts';
+import { telephoneHref } from '#src/lib/format.ts';
+import type { OutgoingAlert } from './alert-outbox.ts';
+import { AlertStatus } from './AlertStatus.tsx';
+
+type Props = {
+  /** The serious findings, the most urgent first; at least one. */
+  findings: readonly Finding[];
+  clinic: ClinicCard;
+  alertId: string;
+  entry: OutgoingAlert | undefined;
+  onMistake: () => void;
+  onGoOn: () => void;
+};
+
+type Look = 'emergency' | 'crisis' | 'urgent';
+
+const grounds: Record<Look, string> = {
+  emergency: 'bg-clay-wash',
+  crisis: 'bg-slate-wash',
+  urgent: 'bg-ochre-wash',
+};
+
+function lookOf([first]: readonly Finding[]): Look {
+  if (first?.code === 'self-harm') return 'crisis';
+  return first?.urgency === 'emergency' ? 'emergency' : 'urgent';
+}
+
+/**
+ * The whole screen, at once, from what is on the device: whom to call, what was told, what to do meanwhile, and
+ * what the clinic knows so far.
+ */
+export function CautionScreen({ findings, clinic, alertId, entry, onMistake, onGoOn }: Props) {
+  const { t } = useTranslation(['check-in-screens', 'rules']);
+  const heading = useRef<HTMLHeadingElement>(null);
+  useHoldScreen(true);
+  useEffect(() => {
+    window.scrollTo(0, 0);
+    heading.current?.focus();
+  }, []);
+  const look = lookOf(findings);
+  const numbers = {
+    emergencyNumber: clinic.emergencyNumber,
+    crisisNumber: clinic.crisisNumber,
+    onCallNumber: clinic.onCallNumber,
+  };
+  const texts = findings.map((finding) => {
+    const { values, ...keys } = patientTextOf(finding);
+    const words = (key: string) => t(key, { ...numbers, ...values });
+    return {
+      title: words(keys.title),
+      told: words(keys.told),
+      why: words(keys.why),
+      meanwhile: words(keys.meanwhile),
+      next: words(keys.next),
+    };
+  });
+  const unique = (part: 'why' | 'meanwhile' | 'next') => [...new Set(texts.map((text) => text[part]))];
+  const title = texts[0]?.title ?? '';
+  useEffect(() => {
+    document.title = t('common:title', { page: title });
+  }, [t, title]);
+  return (
+    <div className={classNames('base-large min-h-dvh', grounds[look])}>
+      <main className="mx-auto grid w-full max-w-xl gap-5 px-5 py-8">
+        {look === 'crisis' ? (
+          <HeartHandshake className="size-16 text-slate" strokeWidth={1.5} aria-hidden />
+        ) : (
+          <SignShape shape={look === 'emergency' ? 'octagon' : 'triangle'} size="large" />
+        )}
+        <div className="grid gap-2">
+          <h1 ref={heading} tabIndex={-1} className="text-3xl leading-tight">
+            {title}
+          </h1>
+          <p className="text-lg leading-snug">
+            <Trans
+              t={t}
+              i18nKey="caution.toldUs"
+              values={{ told: texts.map(({ told }) => told).join('; ') }}
+              components={{ b: <strong /> }}
+            />{' '}
+            {unique('why').slice(0, 2).join(' ')}
+          </p>
+        </div>
+        <Calls look={look} findings={findings} clinic={clinic} />
+        <section className="grid gap-2 rounded bg-sheet px-4 py-3.5">
+          <h2 className="text-lg">{t('rules:caution.while-you-wait')}</h2>
+          {unique('meanwhile').map((words) => (
+            <p key={words}>{words}</p>
+          ))}
+        </section>
+        <AlertStatus entry={entry} alertId={alertId} onCallNumber={clinic.onCallNumber} />
+        <p className="text-ink">{unique('next').slice(0, 1)}</p>
+        <div className="grid justify-items-start gap-2">
+          <Button variant="outline" onClick={onGoOn}>
+            {t('caution.goOn')}
+          </Button>
+          <button
+            type="button"
+            onClick={onMistake}
+            className="min-h-target text-left text-ink underline underline-offset-4"
+          >
+            {t('rules:caution.mistake')}
+          </button>
+        </div>
+      </main>
+    </div>
+  );
+}
+
+type CallsProps = { look: Look; findings: readonly Finding[]; clinic: ClinicCard };
+
+function Calls({ look, findings, clinic }: CallsProps) {
+  const { t } = useTranslation(['check-in-screens', 'rules']);
+  const crisis = findings.some(({ code }) => code === 'self-harm');
+  const emergency = (
+    <LinkButton
+      href={telephoneHref(clinic.emergencyNumber)}
+      variant={look === 'emergency' ? 'danger' : 'danger-outline'}
+      size="large"
+      block
+      icon={Phone}
+    >
+      {t('rules:caution.call', { number: clinic.emergencyNumber })}
+    </LinkButton>
+  );
+  const crisisLine = crisis ? (
+    <LinkButton href={telephoneHref(clinic.crisisNumber)} size="large" block icon={Phone}>
+      {t('caution.crisis', { number: clinic.crisisNumber })}
+    </LinkButton>
+  ) : null;
+  const onCall = (
+    <LinkButton
+      href={telephoneHref(clinic.onCallNumber)}
+      variant={look === 'emergency' ? 'danger-outline' : look === 'urgent' ? 'primary' : 'outline'}
+      size="large"
+      block
+      icon={look === 'urgent' ? Phone : undefined}
+    >
+      {t('rules:caution.call-clinic')}
+    </LinkButton>
+  );
+  if (look === 'crisis') {
+    return (
+      <div className="grid gap-3">
+        {crisisLine}
+        {emergency}
+        {onCall}
+      </div>
+    );
+  }
+  return (
+    <div className="grid gap-3">
+      {look === 'emergency' ? emergency : onCall}
+      {look === 'emergency' ? crisisLine : null}
+      {look === 'emergency' ? onCall : emergency}
+    </div>
+  );
+}

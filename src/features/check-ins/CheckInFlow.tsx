@@ -1,0 +1,111 @@
+import { useEffect, useRef } from 'react';
+import { useTranslation } from 'react-i18next';
+import { isAnswered } from '#shared/check-ins/answering.ts';
+import { screensFor, secondsLeft } from '#shared/check-ins/walk.ts';
+import { useControlsSide } from '#src/app/free-hand.ts';
+import { CautionScreen } from './CautionScreen.tsx';
+import { findingsOf, seriousOf } from './danger-watch.ts';
+import { DoneScreen } from './DoneScreen.tsx';
+import type { CheckInDraft } from './draft.ts';
+import { Question } from './Question.tsx';
+import { QuestionFrame } from './QuestionFrame.tsx';
+import { Review } from './Review.tsx';
+import { SendFailureBanner } from './SendFailureBanner.tsx';
+import { useCheckIn } from './use-check-in.ts';
+import { answerWords, questionWords, usualWords } from './words.ts';
+
+/** One question after the other, the caution over them when one is due, and what happens next at the end. */
+export function CheckInFlow({ start, firstName }: { start: CheckInDraft; firstName: string }) {
+  const { t } = useTranslation(['check-in-screens', 'check-in', 'plan']);
+  const checkIn = useCheckIn(start);
+  const { draft, screen, me } = checkIn;
+  const { answers, context, mode, caution } = draft;
+  const side = useControlsSide();
+  const heading = useRef<HTMLHeadingElement>(null);
+  const title = screen ? questionWords(t, screen, context) : '';
+  const screenId = screen?.id;
+  useEffect(() => {
+    heading.current?.focus({ preventScroll: true });
+  }, [screenId, caution]);
+  useEffect(() => {
+    // The question itself stays out of the title, which other programs can read.
+    document.title = t('common:title', { page: t(`title.${mode}`) });
+  }, [t, mode, caution]);
+
+  const findings = findingsOf(answers, context);
+  const serious = seriousOf(findings);
+  if (caution && serious.length > 0) {
+    return (
+      <CautionScreen
+        key={caution.alertId}
+        findings={serious}
+        clinic={me.clinic}
+        alertId={caution.alertId}
+        entry={checkIn.alerts.find(({ alert }) => alert.id === caution.alertId)}
+        onMistake={checkIn.mistaken}
+        onGoOn={checkIn.closeCaution}
+      />
+    );
+  }
+  if (checkIn.receipt) {
+    return (
+      <DoneScreen receipt={checkIn.receipt} findings={findings} firstName={firstName} clinic={me.clinic} />
+    );
+  }
+  if (!screen) return null;
+
+  const screens = screensFor(answers, context, mode);
+  const last = screens.find(({ id }) => id === draft.lastAt) ?? null;
+  const lastWords = last
+    ? (usualWords(t, last, answers, context) ??
+      t('answered', { answer: answerWords(t, last, answers, context) ?? '' }))
+    : null;
+  return (
+    <QuestionFrame
+      title={title}
+      hint={screen.hintKey ? t(screen.hintKey) : undefined}
+      headingRef={heading}
+      progress={{
+        current: screens.indexOf(screen) + 1,
+        total: screens.length,
+        seconds: secondsLeft(screen.id, answers, context, mode),
+      }}
+      side={side}
+      emergencyNumber={me.clinic.emergencyNumber}
+      lastAnswer={last && lastWords ? { words: lastWords, onUndo: () => checkIn.undo(last) } : null}
+      onNext={screen.kind !== 'note' && isAnswered(screen, answers) ? checkIn.goOn : null}
+      onBack={checkIn.goBack}
+      backLeaves={checkIn.isFirst}
+    >
+      {screen.kind === 'note' ? (
+        <Review
+          draft={draft}
+          side={side}
+          onNote={(note) => checkIn.answer({ ...answers, note }, false)}
+          onChange={checkIn.change}
+          onSend={checkIn.send}
+          sending={checkIn.post.isPending}
+          failure={
+            checkIn.post.error ? (
+              <SendFailureBanner
+                error={checkIn.post.error}
+                onFix={checkIn.change}
+                onSendAsNew={checkIn.sendAsNew}
+              />
+            ) : null
+          }
+        />
+      ) : (
+        <Question
+          key={screen.id}
+          screen={screen}
+          label={title}
+          answers={answers}
+          context={context}
+          side={side}
+          onAnswer={checkIn.answer}
+        />
+      )}
+    </QuestionFrame>
+  );
+}

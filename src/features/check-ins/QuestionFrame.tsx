@@ -1,0 +1,91 @@
+import { ArrowLeft, ArrowRight, History } from 'lucide-react';
+import type { ReactNode, RefObject } from 'react';
+import { useTranslation } from 'react-i18next';
+import { BottomDock } from '#src/components/BottomDock.tsx';
+import { Button } from '#src/components/Button.tsx';
+import { EmergencyLine } from '#src/components/EmergencyLine.tsx';
+import { IconButton } from '#src/components/IconButton.tsx';
+import { ProgressSteps } from '#src/components/ProgressSteps.tsx';
+import { classNames } from '#src/components/class-names.ts';
+import { telephoneHref } from '#src/lib/format.ts';
+
+type Props = {
+  title: string;
+  hint?: string;
+  headingRef: RefObject<HTMLHeadingElement | null>;
+  progress: { current: number; total: number; seconds: number };
+  side: 'left' | 'right';
+  emergencyNumber: string;
+  /** The answer just given, shown back beside the person's usual, with the way to take it back. */
+  lastAnswer: { words: string; onUndo: () => void } | null;
+  /** On when the question is answered by more than one press, or was answered before. */
+  onNext: (() => void) | null;
+  onBack: () => void;
+  /** On the first question there is nothing to go back to but the page before. */
+  backLeaves: boolean;
+  children: ReactNode;
+};
+
+/** One question on a screen: where one stands, the question, the answers, and the emergency line. */
+export function QuestionFrame(props: Props) {
+  const { title, hint, headingRef, progress, side, emergencyNumber, lastAnswer } = props;
+  const { t } = useTranslation('check-in-screens');
+  const { t: tCommon } = useTranslation();
+  const towards = side === 'right' ? 'flex-row' : 'flex-row-reverse';
+  return (
+    <div className="base-large flex min-h-dvh flex-col">
+      <header className="mx-auto flex w-full max-w-xl items-center gap-1 px-3 pt-3">
+        <IconButton
+          icon={ArrowLeft}
+          label={props.backLeaves ? t('leave') : tCommon('back')}
+          onClick={props.onBack}
+        />
+        <ProgressSteps
+          total={progress.total}
+          current={progress.current}
+          label={t('step', { current: progress.current, total: progress.total })}
+          remaining={t('left', { seconds: progress.seconds })}
+        />
+      </header>
+      <main className="mx-auto w-full max-w-xl grow px-5 pt-3 pb-6">
+        <h1 ref={headingRef} tabIndex={-1} className="text-2xl leading-tight">
+          {title}
+        </h1>
+        {hint ? <p className="mt-1 text-ink-soft">{hint}</p> : null}
+        <div className="mt-4">{props.children}</div>
+      </main>
+      <BottomDock>
+        <div className="mx-auto grid w-full max-w-xl gap-2 bg-paper px-5 empty:hidden">
+          {/* The region stands from the start, or what arrives in it is not announced. */}
+          <div role="status">
+            {lastAnswer ? (
+              <p className="mt-2 flex items-center gap-3 rounded bg-leaf-wash px-4 py-2.5 leading-snug">
+                <History className="size-6 shrink-0 text-leaf" aria-hidden />
+                <span className="min-w-0">{lastAnswer.words}</span>
+              </p>
+            ) : null}
+          </div>
+          {lastAnswer || props.onNext ? (
+            <div className={classNames('flex gap-3 pb-3', towards)}>
+              {lastAnswer ? (
+                <Button variant="outline" onClick={lastAnswer.onUndo}>
+                  {t('undo')}
+                </Button>
+              ) : null}
+              {props.onNext ? (
+                <span className="grid grow">
+                  <Button block iconAfter={ArrowRight} onClick={props.onNext}>
+                    {t('next')}
+                  </Button>
+                </span>
+              ) : null}
+            </div>
+          ) : null}
+        </div>
+        <EmergencyLine label={tCommon('emergency.label')} href={telephoneHref(emergencyNumber)}>
+          {tCommon('emergency.short', { number: emergencyNumber })}
+        </EmergencyLine>
+      </BottomDock>
+    </div>
+  );
+}

@@ -1,0 +1,88 @@
+import { useEffect, useRef, useState } from 'react';
+import { useTranslation } from 'react-i18next';
+import type { Message, ThreadDetail } from '#shared/threads/contract.ts';
+import { useMe } from '#src/app/session.tsx';
+import { classNames } from '#src/components/class-names.ts';
+import { ErrorState } from '#src/components/ErrorState.tsx';
+import { LinkButton } from '#src/components/LinkButton.tsx';
+import { LoadingState } from '#src/components/LoadingState.tsx';
+import { ApiProblem } from '#src/lib/problem.ts';
+import { Composer } from './Composer.tsx';
+import { MessageLog } from './MessageLog.tsx';
+import { OutOfHours } from './OutOfHours.tsx';
+import { threadListPlace } from './places.ts';
+import { useMessages, useThread } from './queries.ts';
+import { useRefusal } from './refusal.ts';
+import type { Side } from './seen-mark.ts';
+import { ThreadHead } from './ThreadHead.tsx';
+
+type Props = { threadId: string; side: Side };
+
+/** One thread, live: its messages and where one writes. On a patient's page it brings the first heading. */
+export function ThreadView({ threadId, side }: Props) {
+  const { t } = useTranslation(['threads', 'common']);
+  const thread = useThread(threadId);
+  const messages = useMessages(threadId);
+  const error = thread.error ?? messages.error;
+  const refusal = useRefusal(error);
+  if (thread.data && messages.data) {
+    return <OpenThread key={threadId} thread={thread.data} messages={messages.data} side={side} />;
+  }
+  if (!error) return <LoadingState label={t('thread.loading')} lines={8} />;
+  if (error instanceof ApiProblem && error.code === 'not-found') {
+    return (
+      <ErrorState title={t('thread.gone')}>
+        <LinkButton to={threadListPlace(side)} variant="outline">
+          {t('thread.toList')}
+        </LinkButton>
+      </ErrorState>
+    );
+  }
+  const retry = () => Promise.all([thread.refetch(), messages.refetch()]);
+  return (
+    <ErrorState
+      title={t('thread.failed')}
+      retry={{
+        label: t('common:tryAgain'),
+        onRetry: () => void retry(),
+        busy: thread.isFetching || messages.isFetching,
+      }}
+    >
+      {refusal}
+    </ErrorState>
+  );
+}
+
+type OpenThreadProps = { thread: ThreadDetail; messages: readonly Message[]; side: Side };
+
+function OpenThread({ thread, messages, side }: OpenThreadProps) {
+  const { t } = useTranslation('threads');
+  const { clinic } = useMe();
+  const heading = useRef<HTMLHeadingElement>(null);
+  useEffect(() => heading.current?.focus({ preventScroll: true }), []);
+  const [sentHere, setSentHere] = useState(0);
+  const isClinic = side === 'clinic';
+  return (
+    <article className={classNames('flex flex-col', isClinic && 'min-h-full')}>
+      <ThreadHead thread={thread} side={side} headingRef={heading} />
+      <MessageLog thread={thread} messages={messages} side={side} followOwn={sentHere} />
+      <div
+        className={classNames(
+          'grid gap-3 pt-3',
+          // A patient's page keeps its own bar at the foot, and two of them would cover what is read.
+          isClinic &&
+            'z-10 -mb-4 bg-sheet pb-4 @4xl/clinic:-mb-5 @4xl/clinic:pb-5 [@media(min-height:34em)]:sticky [@media(min-height:34em)]:bottom-0',
+        )}
+      >
+        {thread.state === 'closed' ? <p className="text-ink-soft">{t(`closed.${side}`)}</p> : null}
+        {isClinic ? null : <OutOfHours clinic={clinic} />}
+        <Composer
+          threadId={thread.id}
+          label={t(`composer.label.${side}`, { name: thread.patient.name })}
+          messages={messages}
+          onSent={() => setSentHere((count) => count + 1)}
+        />
+      </div>
+    </article>
+  );
+}

@@ -1,0 +1,68 @@
+import { Check, MessageSquare, MessagesSquare } from 'lucide-react';
+import type { FlagCase } from '#shared/triage/contract.ts';
+import { Button } from '#src/components/Button.tsx';
+import { LinkButton } from '#src/components/LinkButton.tsx';
+import { SectionHeading } from '#src/components/SectionHeading.tsx';
+import type { DraftHandle } from '#src/lib/drafts.ts';
+import { formatMoment } from '#src/lib/format.ts';
+import { ReplyForm } from './ReplyForm.tsx';
+import { firstNameOf } from './words.ts';
+
+type Props = {
+  flag: FlagCase;
+  isMine: boolean;
+  reply: DraftHandle;
+  replyOpen: boolean;
+  onReply: (open: boolean) => void;
+  /** Null where this person may not close it. */
+  onClose: (() => void) | null;
+  timeZone: string;
+  nowMs: number;
+};
+
+function holderWords({ claimedBy, claimedAt, state }: FlagCase, isMine: boolean, since: string): string {
+  if (state === 'closed') return 'This flag is closed.';
+  if (!claimedBy || !claimedAt) return 'Nobody has claimed it yet.';
+  return isMine
+    ? `You have had it since ${since}.`
+    : `${claimedBy.name} has had it since ${since}, and closes it or gives it back.`;
+}
+
+/** The moves there are, and who has the flag. */
+export function WhatNext(props: Props) {
+  const { flag, isMine, reply, replyOpen, onReply, onClose, timeZone, nowMs } = props;
+  const firstName = firstNameOf(flag.patient.name);
+  const since = flag.claimedAt === null ? '' : formatMoment(flag.claimedAt, nowMs, timeZone);
+  return (
+    <section aria-labelledby="case-next">
+      <SectionHeading id="case-next" level={3} wire>
+        What next
+      </SectionHeading>
+      <p className="mb-3 text-[0.9375rem] text-ink-soft">{holderWords(flag, isMine, since)}</p>
+      <div className="grid gap-3">
+        {replyOpen ? (
+          <ReplyForm
+            flag={flag}
+            reply={reply}
+            onSent={() => onReply(false)}
+            onCancel={() => onReply(false)}
+          />
+        ) : (
+          <Button block variant="outline" icon={MessageSquare} onClick={() => onReply(true)}>
+            {reply.draft.text === '' ? `Reply to ${firstName}` : `Go on with the reply to ${firstName}`}
+          </Button>
+        )}
+        {flag.threadId === null ? null : (
+          <LinkButton block variant="outline" icon={MessagesSquare} to={`/clinic/messages/${flag.threadId}`}>
+            Open the thread
+          </LinkButton>
+        )}
+        {onClose === null ? null : (
+          <Button block variant="outline" icon={Check} onClick={onClose}>
+            Close with an outcome
+          </Button>
+        )}
+      </div>
+    </section>
+  );
+}

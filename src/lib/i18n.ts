@@ -1,0 +1,39 @@
+import i18next from 'i18next';
+import { initReactI18next } from 'react-i18next';
+import common from '#src/locales/en/common.json';
+
+const languages = ['en'] as const;
+type Language = (typeof languages)[number];
+
+/** Each file of words is a chunk of its own, loaded with the screens that need it; the shell's are always there. */
+const files = import.meta.glob<{ default: Record<string, unknown> }>([
+  '../locales/*/*.json',
+  '!../locales/*/common.json',
+]);
+
+/** Starts with the words of the shell; `loadWords` brings the rest. */
+export async function startI18n(): Promise<void> {
+  await i18next.use(initReactI18next).init({
+    lng: 'en' satisfies Language,
+    supportedLngs: languages,
+    ns: ['common'],
+    defaultNS: 'common',
+    resources: { en: { common } },
+    interpolation: { escapeValue: false },
+    returnNull: false,
+  });
+}
+
+/** Fetches files of words, each once. A failure rejects, as a missing chunk of code does. */
+export async function loadWords(names: readonly string[]): Promise<void> {
+  const language = i18next.language;
+  await Promise.all(
+    names
+      .filter((name) => !i18next.hasResourceBundle(language, name))
+      .map(async (name) => {
+        const load = files[`../locales/${language}/${name}.json`];
+        if (!load) throw new Error(`There are no words named "${name}" in "${language}".`);
+        i18next.addResourceBundle(language, name, (await load()).default);
+      }),
+  );
+}

@@ -1,0 +1,14 @@
+/**
+ * The first part of every query key. A hint names a topic, and what begins with the topic's prefixes is
+ * fetched again; nothing is fetched that is not on the screen.
+ */
+export const queryPrefixes = {
+  session: ['session'],
+  today: ['today'],
+  plan: ['plan'],
+  checkInContext: ['check-in-context'],
+  alerts: ['alerts'],
+  flags: ['flags'],
+  threads: ['threads'],
+  worker: ['worker'],
+} as const satisfies Record<string, readonly [string]>;

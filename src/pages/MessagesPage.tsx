@@ -1,0 +1,26 @@
+import { SquarePen } from 'lucide-react';
+import { useTranslation } from 'react-i18next';
+import { useControlsSide } from '#src/app/free-hand.ts';
+import { usePageHeading } from '#src/app/page-heading.ts';
+import { LinkButton } from '#src/components/LinkButton.tsx';
+import { PageHeader } from '#src/components/PageHeader.tsx';
+import { classNames } from '#src/components/class-names.ts';
+import { ThreadList } from '#src/features/threads/ThreadList.tsx';
+
+/** A patient's threads, and the way to a new one. */
+export function MessagesPage() {
+  const { t } = useTranslation(['messages', 'threads']);
+  const heading = usePageHeading(t('title'));
+  const side = useControlsSide();
+  return (
+    <div className="grid gap-5">
+      <PageHeader title={t('title')} detail={t('detail')} headingRef={heading} />
+      <div className={classNames('grid sm:w-80', side === 'right' && 'sm:ml-auto')}>
+        <LinkButton to="/messages/new" size="large" block icon={SquarePen}>
+          {t('new')}
+        </LinkButton>
+      </div>
+      <ThreadList side="patient" />
+    </div>
+  );
+}

@@ -1,0 +1,27 @@
+import { describe, expect, it } from 'vitest';
+import { Problem } from '#shared/problems/problems.ts';
+import { ApiProblem, Unreachable } from '#src/lib/problem.ts';
+import { refusalOf } from '#src/features/triage/refusals.ts';
+
+const answered = (problem: Problem) => new ApiProblem(problem.toBody());
+
+describe('what is said when a move is refused', () => {
+  it('names the colleague who holds the flag, and says that what was typed is kept', () => {
+    const conflict = answered(new Problem('claimed-by-other', undefined, { claimedBy: 'Callum Reyes' }));
+    const { title, detail } = refusalOf(conflict, 'Your text is kept here.');
+    expect(title).toBe('Callum Reyes has claimed this flag.');
+    expect(detail).toContain('Your text is kept here.');
+  });
+
+  it('shows what the server gave as its reason', () => {
+    expect(refusalOf(answered(new Problem('state-conflict', 'This flag is closed.'))).title).toBe(
+      'This flag is closed.',
+    );
+  });
+
+  it('does not claim that nothing happened when there was no answer', () => {
+    const { title, detail } = refusalOf(new Unreachable());
+    expect(title).toBe('The server did not answer.');
+    expect(detail).toContain('not known');
+  });
+});
