@@ -75,8 +75,8 @@ type Asked = {
   askedFor: string | null;
 };
 
-export type ScaleScreen = Asked & { kind: 'scale'; key: 'painNow' | 'painWorst' };
-export type SingleScreen = {
+type ScaleScreen = Asked & { kind: 'scale'; key: 'painNow' | 'painWorst' };
+type SingleScreen = {
   [K in SingleKey]: Asked & {
     kind: 'single';
     key: K;
@@ -85,7 +85,7 @@ export type SingleScreen = {
     severity: readonly NonNullable<Answers[K]>[];
   };
 }[SingleKey];
-export type SeveralScreen =
+type SeveralScreen =
   | {
       [K in SeveralKey]: Asked & {
         kind: 'several';
@@ -96,15 +96,15 @@ export type SeveralScreen =
     }[SeveralKey]
   | (Asked & { kind: 'several'; key: 'danger'; choices: readonly Choice<DangerCode>[]; alone: AloneChoice });
 /** The choices are the precautions in force; their words come from the plan. */
-export type PrecautionsScreen = Asked & { kind: 'precautions'; key: 'heldOff'; alone: AloneChoice };
+type PrecautionsScreen = Asked & { kind: 'precautions'; key: 'heldOff'; alone: AloneChoice };
 export type TilesScreen = Asked & {
   kind: 'tiles';
   key: 'symptoms';
   tiles: readonly Tile[];
   alone: AloneChoice;
 };
-export type TemperatureScreen = Asked & { kind: 'temperature'; key: 'temperature'; notMeasuredKey: string };
-export type NoteScreen = Asked & { kind: 'note'; key: 'note' };
+type TemperatureScreen = Asked & { kind: 'temperature'; key: 'temperature'; notMeasuredKey: string };
+type NoteScreen = Asked & { kind: 'note'; key: 'note' };
 
 /** A list in which several answers may be ticked: more ticks are never milder. */
 export type TickScreen = SeveralScreen | PrecautionsScreen | TilesScreen;

@@ -1,6 +1,6 @@
 import { daysBetween, type LocalDate } from '../plans/calendar.ts';
 
-export type Since = {
+type Since = {
   /** The words, as a key of the check-in's texts. */
   key: 'check-in:since.surgery' | 'check-in:since.today' | 'check-in:since.weekday' | 'check-in:since.date';
   /** Filled into the words as a weekday or a date; null where the words need none. */

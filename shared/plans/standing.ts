@@ -1,7 +1,7 @@
 import { addDays, dateOfWeek, dayPostOp, daysBetween, weekPostOp, type LocalDate } from './calendar.ts';
 import type { PlanContent, PlanExercise, PlanPhase, SignOff } from './plan.ts';
 
-export type StandingPhase = PlanPhase & {
+type StandingPhase = PlanPhase & {
   /** The first phase opens with surgery, every other one by a clinician's sign-off. */
   openedOn: LocalDate | null;
   openedOnDay: number | null;
@@ -10,7 +10,7 @@ export type StandingPhase = PlanPhase & {
   usualEndDate: LocalDate | null;
 };
 
-export type PrecautionInForce = {
+type PrecautionInForce = {
   code: string;
   icon: string;
   clinicianText: string;

@@ -5,7 +5,7 @@ import { answerWords } from './words.ts';
 
 type Values = Finding['values'];
 
-export type Explanation = {
+type Explanation = {
   /** A few words for the queue: "Fall onto the arm; pain 8, usual 3". */
   title: string;
   /** The answer, the value beside the person's own usual, the day, the rule and its version. */

@@ -22,7 +22,7 @@ const variants: Partial<Record<RuleCode, (finding: Finding) => string>> = {
   fever: ({ values }) => (values.temperatureTenths === null ? 'fever-felt' : 'fever'),
 };
 
-export type PatientText = {
+type PatientText = {
   title: string;
   /** Completes "You told us: …". */
   told: string;

@@ -35,9 +35,9 @@ export type Hit = {
 /** What exercises stop at once, on the device, until a clinician clears it. */
 export type Pause = 'all' | 'loading' | null;
 
-export type CallSheetQuestion = { ask: string; answer: 'yes-no' | 'time' | 'number' | 'words' };
+type CallSheetQuestion = { ask: string; answer: 'yes-no' | 'time' | 'number' | 'words' };
 
-export type RuleParameters = Readonly<Record<string, number | readonly string[]>>;
+type RuleParameters = Readonly<Record<string, number | readonly string[]>>;
 
 /**
  * A rule as a clinic reviews it: all but `detect` is plain data. Thresholds stand in the parameters and nowhere

@@ -1,5 +1,6 @@
 import { describe, expect, test } from 'vitest';
-import { answersSchema, noteMaxCharacters } from '#shared/check-ins/answers.ts';
+import { answersSchema } from '#shared/check-ins/answers.ts';
+import { noteMaxCharacters } from '#shared/check-ins/note-length.ts';
 
 const fieldsRefused = (input: unknown): string[] =>
   answersSchema

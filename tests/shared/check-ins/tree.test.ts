@@ -1,10 +1,12 @@
 import { describe, expect, test } from 'vitest';
 import { answersSchema, type AnswerKey } from '#shared/check-ins/answers.ts';
 import { dangerCodes, symptomCodes } from '#shared/check-ins/symptoms.ts';
+import type { Screen } from '#shared/check-ins/screens.ts';
 import { tree } from '#shared/check-ins/tree.ts';
 import checkInWords from '#src/locales/en/check-in.json' with { type: 'json' };
 import { codesOf } from './arbitraries.ts';
-import { textAt } from '../words-of.ts';
+import { readingGrade, syllablesOf, wordsIn } from '../reading-grade.ts';
+import { filled, textAt } from '../words-of.ts';
 
 describe('the question tree', () => {
   test('each screen has an id of its own', () => {
@@ -87,5 +89,43 @@ describe('the question tree', () => {
         : []),
     ]);
     expect(keys.filter((key) => textAt({ 'check-in': checkInWords }, key) === null)).toEqual([]);
+  });
+
+  const sentencesOn = (screen: Screen): string => {
+    const keys = [screen.titleKey, ...(screen.hintKey ? [screen.hintKey] : [])];
+    const choices =
+      screen.kind === 'tiles'
+        ? screen.tiles.flatMap((tile) => [
+            tile.textKey,
+            tile.examplesKey,
+            ...tile.choices.map(({ textKey }) => textKey),
+          ])
+        : 'choices' in screen
+          ? screen.choices.map(({ textKey }) => textKey)
+          : [];
+    return [...keys, ...choices]
+      .map((key) => filled(textAt({ 'check-in': checkInWords }, key) ?? '', { since: 'since Friday' }))
+      .map((text) => (/[.?!]$/.test(text) ? text : `${text}.`))
+      .join(' ');
+  };
+
+  test.each(tree)('the words of $id read at grade 6 or lower', (screen) => {
+    expect(readingGrade(sentencesOn(screen))).toBeLessThanOrEqual(6);
+  });
+
+  // Words of three syllables or more, each the plain word for its thing.
+  test('the hard words of the questions are few, and each is listed by name', () => {
+    const hard = tree
+      .flatMap((screen) => wordsIn(sentencesOn(screen)))
+      .filter((word) => syllablesOf(word) >= 3);
+    expect([...new Set(hard.map((word) => word.toLowerCase()))].sort()).toEqual([
+      'anything',
+      'confusion',
+      'different',
+      'medicine',
+      'surgery',
+      'temperature',
+      'vomited',
+    ]);
   });
 });

@@ -2,6 +2,7 @@ import { describe, expect, test } from 'vitest';
 import { planContentSchema } from '#shared/plans/plan.ts';
 import { reverseReplacement } from '#shared/plans/reverse-replacement.ts';
 import planWords from '#src/locales/en/plan.json' with { type: 'json' };
+import { readingGrade } from '../reading-grade.ts';
 import { textAt } from '../words-of.ts';
 import reference from './reverse-replacement.reference.json' with { type: 'json' };
 
@@ -129,5 +130,13 @@ describe('the reverse-replacement plan that ships', () => {
       ),
     ];
     expect(keys.filter((key) => textAt(words, key) === null)).toEqual([]);
+  });
+
+  test.each(Object.entries(planWords.precautions))('the words of %s read at grade 6 or lower', (_, words) => {
+    expect(readingGrade(`${words.title}. ${words.detail} ${words.did}. ${words.why}`)).toBeLessThanOrEqual(6);
+  });
+
+  test.each(Object.entries(planWords.exercises))('the steps of %s read at grade 6 or lower', (_, words) => {
+    expect(readingGrade(words.steps)).toBeLessThanOrEqual(6);
   });
 });

@@ -1,6 +1,6 @@
 import { describe, expect, test } from 'vitest';
 import type { Answers } from '#shared/check-ins/answers.ts';
-import { firedBy, urgencyOf } from './case.ts';
+import { firedBy } from './case.ts';
 
 // The anchors stand in domain.md, section 4. Each has its source beside it: published, D = a default of ours,
 // M = from memory, to be verified.
@@ -35,16 +35,16 @@ describe('the anchors of the red-flag rules', () => {
   // Hospital discharge instructions after shoulder surgery: 38.0 and 38.3 °C are both published, with their
   // Fahrenheit 100.4 and 101.0.
   test.each([
-    ['37.9 °C', 'C', 379, null],
-    ['38.0 °C', 'C', 380, 'same-day'],
-    ['38.2 °C', 'C', 382, 'same-day'],
-    ['38.3 °C', 'C', 383, 'urgent'],
-    ['100.3 °F', 'F', 1003, null],
-    ['100.4 °F', 'F', 1004, 'same-day'],
-    ['100.9 °F', 'F', 1009, 'same-day'],
-    ['101.0 °F', 'F', 1010, 'urgent'],
+    ['37.9 °C', 'C', 379, []],
+    ['38.0 °C', 'C', 380, ['fever same-day']],
+    ['38.2 °C', 'C', 382, ['fever same-day']],
+    ['38.3 °C', 'C', 383, ['fever-high urgent']],
+    ['100.3 °F', 'F', 1003, []],
+    ['100.4 °F', 'F', 1004, ['fever same-day']],
+    ['100.9 °F', 'F', 1009, ['fever same-day']],
+    ['101.0 °F', 'F', 1010, ['fever-high urgent']],
   ] as const)('%s', (_, unit, tenths, expected) => {
     const answers: Answers = { symptoms: ['hot'], temperature: { unit, tenths }, shaking: 'no' };
-    expect(urgencyOf(answers)).toBe(expected);
+    expect(firedBy(answers)).toEqual(expected);
   });
 });

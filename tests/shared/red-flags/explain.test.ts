@@ -67,7 +67,7 @@ describe('a finding in words for clinicians', () => {
           expect(source).not.toBe('');
         }
       }),
-      { numRuns: 2000 },
+      { numRuns: 500 },
     );
   });
 });

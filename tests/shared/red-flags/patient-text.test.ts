@@ -58,7 +58,7 @@ describe("the rules' words for the patient", () => {
           }
         }
       }),
-      { numRuns: 2000 },
+      { numRuns: 300 },
     );
   });
 

@@ -11,7 +11,7 @@ import { anyAnswers, anyCircumstances, codesOf } from '../check-ins/arbitraries.
 
 type Circumstances = typeof anyCircumstances extends fc.Arbitrary<infer T> ? T : never;
 
-const runs = { numRuns: 1000 };
+const runs = { numRuns: 250 };
 /** 0 is none, 4 an emergency. */
 const height = (urgency: Urgency | null): number =>
   urgency === null ? 0 : urgencies.length - urgencies.indexOf(urgency);
