@@ -58,7 +58,6 @@ async function build() {
   try {
     const buildId = sourcesId();
     if (builtId() === buildId) return;
-    say('Building …');
     // Gone first and written last: an interrupted build is never taken for a finished one.
     rmSync(join(root, 'dist/build.json'), { force: true });
     rmSync(join(root, 'dist/server'), { recursive: true, force: true });

@@ -1,16 +1,16 @@
 import { join } from 'node:path';
 import { setTimeout as wait } from 'node:timers/promises';
-import { startCluster } from './cluster.mjs';
+import { givenDatabase, migrate, startDatabase } from './database.mjs';
+import { demoAct, showAccounts } from './demo-clinic.mjs';
 import { ensureInstalled } from './install.mjs';
-import { lastLines } from './logs.mjs';
 import { answers, startPart } from './parts.mjs';
 import { local, localFolder, root } from './places.mjs';
 import { freePort, portIsFree } from './ports.mjs';
+import { buildWhenNeeded, programs } from './programs.mjs';
 import { run, takeRunLock } from './run.mjs';
 import { say, Stop } from './say.mjs';
 import { secrets } from './secrets.mjs';
-import { builtId, sourcesId } from './sources.mjs';
-import { runStep } from './steps.mjs';
+import { builtId } from './sources.mjs';
 
 const READY_WITHIN_MS = 60_000;
 
@@ -40,66 +40,17 @@ function progress(line, signal) {
   say(line);
 }
 
-/** The database of DATABASE_URL, whose role may make the others, or else the cluster of this checkout. */
-async function openDatabase(add, signal) {
-  if (process.env.DATABASE_URL === undefined) {
-    progress('Starting the database …', signal);
-    const { stop, ...cluster } = await startCluster();
-    add({
-      ...cluster,
-      name: 'database',
-      lastWords: () => lastLines(cluster.log),
-      stop: (how = 'orderly') => stop(how === 'orderly' ? 'fast' : 'immediate'),
-    });
-    return cluster;
-  }
-  const made = secrets();
-  const as = (role, password) =>
-    Object.assign(new URL(process.env.DATABASE_URL), { username: role, password }).href;
-  return {
-    ownerUrl: process.env.DATABASE_URL,
-    appUrl: as('espalier_app', made.appPassword),
-    gateUrl: as('espalier_gate', made.gatePassword),
-  };
+async function openDatabase(add, tell) {
+  if (process.env.DATABASE_URL !== undefined) return givenDatabase();
+  tell('Starting the database …');
+  return add(await startDatabase());
 }
 
-/** How each program of the product is run: from the build, or from the sources with hot reload. */
-function programs(watched) {
-  const tsx = join(root, 'node_modules/tsx/dist/cli.mjs');
-  const built = (name) => ['--enable-source-maps', join(root, 'dist/server', `${name}.js`)];
-  const once = (source) => [tsx, source];
-  const watch = (source) => [tsx, 'watch', '--clear-screen=false', source];
-  if (!watched) {
-    return {
-      migrate: built('migrate'),
-      demo: built('demo'),
-      fakes: built('fakes'),
-      web: built('web'),
-      worker: built('worker'),
-    };
-  }
-  return {
-    migrate: once('server/db/migrate.ts'),
-    demo: once('server/demo/index.ts'),
-    fakes: once('server/fakes/index.ts'),
-    web: watch('server/index.ts'),
-    worker: watch('workers/index.ts'),
-  };
-}
-
-async function buildWhenNeeded(signal) {
-  if (builtId() === sourcesId()) return;
-  progress('Building …', signal);
-  await runStep(process.execPath, [join(root, 'scripts/build.mjs')], { signal });
-}
-
-/** Fills the demo clinic on the first run, moves an older one to today, and returns its accounts. */
-async function prepareDemo(program, databaseEnv, signal) {
-  progress('Preparing the demo clinic …', signal);
-  const options = { env: { ...process.env, ...databaseEnv }, signal };
-  const answer = await runStep(process.execPath, [...program, 'fill'], options);
-  await runStep(process.execPath, [...program, 're-anchor'], options);
-  return JSON.parse(answer.trimEnd().split('\n').at(-1)).accounts;
+/** Fills the demo clinic on the first run, or moves an older one to today, before the worker sees it. */
+async function prepareDemo(program, ownerUrl, tell, signal) {
+  tell('Preparing the demo clinic …');
+  await demoAct(program, 'fill', ownerUrl, signal);
+  return demoAct(program, 're-anchor', ownerUrl, signal);
 }
 
 async function startFakes(args, add, signal) {
@@ -110,13 +61,6 @@ async function startFakes(args, add, signal) {
   const outboxUrl = `http://127.0.0.1:${outboxPort}`;
   await answers(outboxUrl, { signal });
   return { SMTP_URL: `smtp://127.0.0.1:${smtpPort}`, OUTBOX_URL: outboxUrl };
-}
-
-function showAccounts(accounts) {
-  const rows = accounts.map(({ who, role, email, password }) => [who, role, email, password]);
-  const widths = [0, 1, 2].map((column) => Math.max(...rows.map((row) => row[column].length)));
-  say('\nDemo accounts: name, role, e-mail, password (all people are invented)');
-  for (const row of rows) say(`  ${row.map((cell, column) => cell.padEnd(widths[column] ?? 0)).join('  ')}`);
 }
 
 /** Everything from the bare checkout to the ready line, then until it is ended. Returns the exit code. */
@@ -131,25 +75,20 @@ export async function runProduct({ watched }) {
     await requireFreePort({ port, host });
     return await run(publicUrl, async ({ add, signal }) => {
       await ensureInstalled({ signal });
-      const { ownerUrl, appUrl, gateUrl } = await openDatabase(add, signal);
-      if (!watched) await buildWhenNeeded(signal);
+      const tell = (line) => progress(line, signal);
+      const { ownerUrl, appUrl, gateUrl } = await openDatabase(add, tell);
+      if (!watched) await buildWhenNeeded(tell, signal);
       const made = secrets();
       const use = programs(watched);
-      const database = { APP_DATABASE_URL: appUrl, GATE_DATABASE_URL: gateUrl };
-      progress('Migrating …', signal);
-      await runStep(process.execPath, use.migrate, {
-        env: {
-          ...process.env,
-          OWNER_DATABASE_URL: ownerUrl,
-          APP_DATABASE_PASSWORD: made.appPassword,
-          GATE_DATABASE_PASSWORD: made.gatePassword,
-        },
-        signal,
-      });
-      const accounts = demo ? await prepareDemo(use.demo, database, signal) : [];
-      const mail = demo ? await startFakes(use.fakes, add, signal) : { SMTP_URL: process.env.SMTP_URL };
+      tell('Migrating …');
+      await migrate(use.migrate, ownerUrl, signal);
+      const accounts = demo ? await prepareDemo(use.demo, ownerUrl, tell, signal) : [];
+      const mail = demo
+        ? await startFakes(use.fakes, add, signal)
+        : { SMTP_URL: process.env.SMTP_URL, OUTBOX_URL: undefined };
       const shared = {
-        ...database,
+        APP_DATABASE_URL: appUrl,
+        GATE_DATABASE_URL: gateUrl,
         ...mail,
         NODE_ENV: watched ? 'development' : 'production',
         PUBLIC_URL: publicUrl,
@@ -177,7 +116,7 @@ export async function runProduct({ watched }) {
       const worker = startPart({ name: 'worker', args: use.worker, echo: watched, env: shared });
       const workerReady = worker.says('worker ready');
       add(worker);
-      await Promise.race([workerReady, tooLate(worker)]);
+      await Promise.race([workerReady, tooLate(worker, signal)]);
       // Only with a worker's heartbeat is the web ready.
       await answers(`${webUrl}/readyz`, { signal });
       if (watched) await startVite(add, { port, host, webUrl, signal });
@@ -193,9 +132,9 @@ export async function runProduct({ watched }) {
   }
 }
 
-/** Gives up on a part that neither becomes ready nor stops. */
-async function tooLate(part) {
-  await wait(READY_WITHIN_MS, undefined, { ref: false });
+/** Gives up on a part that neither becomes ready nor stops; `signal` gives up at once. */
+async function tooLate(part, signal) {
+  await wait(READY_WITHIN_MS, undefined, { ref: false, signal });
   throw new Stop(
     `The ${part.name} did not become ready within a minute. Its last words:\n${part.lastWords()}`,
   );

@@ -1,0 +1,64 @@
+import { eq, inArray, sql } from 'drizzle-orm';
+import type pg from 'pg';
+import { clinics } from '../db/schema/clinics.ts';
+import { browserSessions, credentials, signedInSessions } from '../db/schema/gate.ts';
+import { withTx, type Tx } from '../db/with-tx.ts';
+import { moveToToday } from './anchor.ts';
+import { demoClinicId } from './clinic.ts';
+import { fillDemo } from './fill.ts';
+import { clinicTables } from './tables.ts';
+
+/** Any number that nothing else locks; two acts at once wait for each other. */
+const demoLock = 4_600_002;
+
+const isThere = async (tx: Tx): Promise<boolean> => {
+  const rows = await tx.select({ isDemo: clinics.isDemo }).from(clinics).where(eq(clinics.id, demoClinicId));
+  const clinic = rows[0];
+  if (clinic && !clinic.isDemo) throw new Error('The clinic with the id of the demo clinic is not a demo.');
+  return clinic !== undefined;
+};
+
+/** Takes the demo clinic away, children first, with its ways in and its people's sessions. */
+const empty = async (tx: Tx): Promise<void> => {
+  const sessions = tx
+    .select({ id: sql<string>`${signedInSessions.id}::text` })
+    .from(signedInSessions)
+    .where(eq(signedInSessions.clinicId, demoClinicId));
+  await tx
+    .delete(browserSessions)
+    .where(inArray(sql`${browserSessions.sess} -> 'passport' ->> 'user'`, sessions));
+  await tx.delete(signedInSessions).where(eq(signedInSessions.clinicId, demoClinicId));
+  await tx.delete(credentials).where(eq(credentials.clinicId, demoClinicId));
+  for (const table of [...clinicTables].reverse()) {
+    await tx.delete(table).where(eq(table.clinicId, demoClinicId));
+  }
+  await tx.delete(clinics).where(eq(clinics.id, demoClinicId));
+};
+
+/**
+ * What can be done to the demo clinic, each in one transaction of the database's owner: done or not done. Row
+ * security holds the owner to this clinic, and every statement names it besides.
+ */
+export const demoActs = {
+  /** Fills it where it is not there yet. */
+  fill: async (tx: Tx, now: Date): Promise<void> => {
+    if (!(await isThere(tx))) await fillDemo(tx, now);
+  },
+  /** Moves it to today where it is of an earlier day. */
+  're-anchor': async (tx: Tx, now: Date): Promise<void> => {
+    if (await isThere(tx)) await moveToToday(tx, now);
+  },
+  /** Empties it and fills it again. */
+  reset: async (tx: Tx, now: Date): Promise<void> => {
+    if (await isThere(tx)) await empty(tx);
+    await fillDemo(tx, now);
+  },
+};
+
+export type DemoAct = keyof typeof demoActs;
+
+export const runDemoAct = (owner: pg.Pool, act: DemoAct, now: Date): Promise<void> =>
+  withTx(owner, { kind: 'system', clinicId: demoClinicId }, async (tx) => {
+    await tx.execute(sql`select pg_advisory_xact_lock(${demoLock})`);
+    await demoActs[act](tx, now);
+  });
