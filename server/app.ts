@@ -93,7 +93,11 @@ export const createApp = (options: AppOptions): { app: Express; identity: Identi
 
   const app = express();
   app.disable('x-powered-by');
-  if (options.trustProxy) app.set('trust proxy', options.trustProxy);
+  if (options.trustProxy) {
+    // A number of proxies must be one: Express takes the text of a number for an address.
+    const { trustProxy } = options;
+    app.set('trust proxy', /^\d+$/.test(trustProxy) ? Number(trustProxy) : trustProxy);
+  }
   app.use(requestLog(log), securityHeaders(secure));
   app.use(
     healthRouter(

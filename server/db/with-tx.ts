@@ -27,7 +27,9 @@ export const withTx = async <T>(pool: Pool, actor: ActingAs, run: (tx: Tx) => Pr
       ],
     );
     const result = await run(drizzle({ client, casing: 'snake_case' }));
-    await client.query('commit');
+    // A statement that failed and was caught leaves nothing to commit, and the database says so without an error.
+    const { command } = await client.query('commit');
+    if (command !== 'COMMIT') throw new Error('The database rolled back what was to be committed.');
     return result;
   } catch (error) {
     try {

@@ -11,6 +11,7 @@ export type Browser = {
   signedIn: SignedIn | null;
   /** Checks an e-mail and a password through Passport's strategy; null where they do not match. */
   authenticate: (email: string, password: string) => Promise<{ clinicId: string; personId: string } | null>;
+  /** Starts a session; the one that this browser held before is over. */
   start: (
     person: { clinicId: string; personId: string; isStaff: boolean },
     staySignedIn: boolean,
@@ -46,6 +47,7 @@ export const browserOf = (
       check(req, req.res, (error) => done(error, null));
     }),
   start: async (person, staySignedIn) => {
+    const replaced = req.user?.session?.sessionId;
     const userAgent = req.headers['user-agent']?.slice(0, 300) ?? null;
     const session = await startSession(gate, { ...person, staySignedIn, userAgent }, now);
     // Passport makes a new browser session here, so an id planted before sign-in is worth nothing after it.
@@ -55,6 +57,7 @@ export const browserOf = (
         else resolve();
       });
     });
+    if (replaced) await revokeSession(gate, replaced, now);
     return session;
   },
   touch: async () => {

@@ -27,6 +27,16 @@ const fieldErrors = (part: string, error: z.ZodError): FieldError[] =>
     return [{ field: at([]), message: issue.message }];
   });
 
+/** What JSON can carry and PostgreSQL cannot keep: NUL, and half of a surrogate pair. */
+const unstorable = (value: unknown, path: string[] = []): FieldError[] => {
+  if (typeof value === 'string') {
+    if (!value.includes('\0') && !/\p{Surrogate}/u.test(value)) return [];
+    return [{ field: path.join('.'), message: 'This holds characters that cannot be kept.' }];
+  }
+  if (typeof value !== 'object' || value === null) return [];
+  return Object.entries(value).flatMap(([key, inner]) => unstorable(inner, [...path, key]));
+};
+
 /** Parses every declared part and lists all fields that are not right, not only the first. */
 const parseInput = ({ contract }: Route, req: Request): Record<string, unknown> => {
   const parts = { params: contract.params, query: contract.query, body: contract.body };
@@ -36,7 +46,10 @@ const parseInput = ({ contract }: Route, req: Request): Record<string, unknown> 
     if (!schema) continue;
     const given: unknown = part === 'body' ? (req.body ?? {}) : req[part as 'params' | 'query'];
     const parsed = schema.safeParse(given);
-    if (parsed.success) input[part] = parsed.data;
+    if (parsed.success) {
+      input[part] = parsed.data;
+      errors.push(...unstorable(parsed.data));
+    }
     // An id that is none cannot name anything: the same answer as a missing one.
     else if (part === 'params') throw new Problem('not-found');
     else errors.push(...fieldErrors(part, parsed.error));
@@ -71,6 +84,15 @@ const servePublic = async (route: PublicRoute, req: Request, options: MountOptio
   return route.handler({ ...parseInput(route, req), pools: options.pools, now, browser });
 };
 
+/** Ids only: whatever else stood in an address stays out of the audit. */
+const idsAskedFor = (req: Request): Record<string, string> =>
+  Object.fromEntries(
+    Object.entries(req.params).map(([name, value]) => [
+      name,
+      typeof value === 'string' && /^[0-9a-f-]{36}$/i.test(value) ? value : 'not an id',
+    ]),
+  );
+
 const serveGuarded = async (route: GuardedRoute, req: Request, options: MountOptions): Promise<unknown> => {
   const now = options.clock();
   const browser = browserOf(req, options.keys, now);
@@ -94,7 +116,7 @@ const serveGuarded = async (route: GuardedRoute, req: Request, options: MountOpt
           person,
           {
             action: 'access.denied',
-            detail: { route: `${route.contract.method} ${route.contract.path}`, ...req.params },
+            detail: { route: `${route.contract.method} ${route.contract.path}`, ...idsAskedFor(req) },
           },
           now,
         ),

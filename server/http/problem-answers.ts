@@ -3,21 +3,25 @@ import type { ErrorRequestHandler, RequestHandler } from 'express';
 import type { Logger } from 'pino';
 import { Problem, problems } from '#shared/problems/problems.ts';
 
-/** What body-parser throws: an error with a type of its own. */
-const fromBodyParser = (error: unknown): Problem | null => {
-  if (!(error instanceof Error) || !('type' in error)) return null;
+/** What Express and its body parser throw at a request that is not right: an error with a 4xx status. */
+const fromRequest = (error: unknown): Problem | null => {
+  if (!(error instanceof Error) || !('status' in error)) return null;
+  if (typeof error.status !== 'number' || error.status < 400 || error.status > 499) return null;
+  if (!('type' in error)) return new Problem('malformed-request');
   if (error.type === 'entity.too.large') return new Problem('too-large');
-  if (typeof error.type === 'string' && error.type.startsWith('entity.'))
-    return new Problem('malformed-request');
   if (error.type === 'charset.unsupported' || error.type === 'encoding.unsupported') {
     return new Problem('unsupported-content');
   }
-  return null;
+  return new Problem('malformed-request');
 };
 
-const unreachableCodes = new Set(['ECONNREFUSED', 'ECONNRESET', '57P01', '57P03', '53300']);
+const unreachableCodes = new Set([
+  ...['ECONNREFUSED', 'ECONNRESET', '57P01', '57P03', '53300'],
+  // It took longer than a lock or a statement may, or was one of two that waited for each other.
+  ...['55P03', '57014', '40P01'],
+]);
 
-/** The database could not be reached or is going away: worth another try, and nothing was kept. */
+/** The database could not be reached, is going away or is too busy: worth another try, and nothing was kept. */
 const fromDatabase = (error: unknown): Problem | null => {
   for (let cause = error; cause instanceof Error; cause = cause.cause) {
     if ('code' in cause && typeof cause.code === 'string' && unreachableCodes.has(cause.code)) {
@@ -40,7 +44,7 @@ export const answerProblems =
       next(error);
       return;
     }
-    const problem = (error instanceof Problem ? error : null) ?? fromBodyParser(error) ?? fromDatabase(error);
+    const problem = (error instanceof Problem ? error : null) ?? fromRequest(error) ?? fromDatabase(error);
     if (problem) {
       if (problem.code === 'unavailable')
         log.warn({ requestId: res.locals.requestId }, 'the database is not reachable');

@@ -23,6 +23,10 @@ export const listenForHints = (
       application_name: 'espalier-hints',
       keepAlive: true,
     });
+    // A connection that breaks may report it more than once; an error that nobody hears ends the process.
+    next.on('error', (error) => {
+      if (!stopped) log.warn({ err: error }, 'the hint connection broke');
+    });
     next.on('notification', ({ payload }) => {
       if (payload) handlers.onAnnouncement(JSON.parse(payload) as Announcement);
     });
@@ -37,18 +41,16 @@ export const listenForHints = (
     while (!stopped) {
       try {
         const current = await connectOnce();
+        if (stopped) {
+          await current.end();
+          return;
+        }
         client = current;
         pauseMs = 100;
         if (first) onReady();
         else handlers.onGap();
         first = false;
-        await new Promise<void>((resolve) => {
-          current.once('error', (error) => {
-            if (!stopped) log.warn({ err: error }, 'the hint connection broke');
-            resolve();
-          });
-          current.once('end', () => resolve());
-        });
+        await new Promise<void>((resolve) => current.once('end', () => resolve()));
         client = null;
       } catch (error) {
         log.warn({ err: error }, 'the hint connection could not be opened');

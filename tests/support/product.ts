@@ -7,7 +7,7 @@ import { createInterface } from 'node:readline';
 import { root } from '../../scripts/places.mjs';
 import { freePort } from '../../scripts/ports.mjs';
 
-export type DemoAccount = { who: string; role: string; email: string; password: string };
+type DemoAccount = { who: string; role: string; email: string; password: string };
 
 /** A product launched as a person does it: by the start script, on a port and with a database of its own. */
 export type Product = {
@@ -34,6 +34,8 @@ type ProductOptions = {
   /** The account that runs it; root alone can choose another than its own. */
   asUser?: { uid: number; gid: number };
   env?: Record<string, string>;
+  /** The place of an earlier launch, to find its data again; a new one by default. */
+  local?: string;
 };
 
 type Launch = Pick<Product, 'local' | 'pid' | 'output' | 'exited' | 'stop'> & {
@@ -42,10 +44,7 @@ type Launch = Pick<Product, 'local' | 'pid' | 'output' | 'exited' | 'stop'> & {
 };
 
 /** Launches the start script without waiting for it to be ready. */
-export async function launchProduct(
-  port: number,
-  options: ProductOptions & { local?: string },
-): Promise<Launch> {
+export async function launchProduct(port: number, options: ProductOptions): Promise<Launch> {
   const local = options.local ?? (await mkdtemp(join(tmpdir(), 'espalier-')));
   // The account that runs PostgreSQL is another one when this is root.
   await chmod(local, 0o755);

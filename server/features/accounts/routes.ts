@@ -33,9 +33,11 @@ export const accountRoutes = [
       const actor = await withTx(pools.app, person, (tx) => loadPersonActor(tx, person));
       if (!actor) throw new Problem('wrong-sign-in');
       const isStaff = actor.roles.some((role) => role !== 'patient' && role !== 'caregiver');
+      const replaced = browser.signedIn;
       const session = await browser.start({ ...found, isStaff }, body.staySignedIn);
       return withTx(pools.app, person, async (tx) => {
         await writeAudit(tx, person, { action: 'session.started', subjectId: session.sessionId }, now);
+        if (replaced) await announceSessionEnd(tx, replaced.sessionId);
         return { me: await describeMe(tx, actor, session, browser.writeToken(session), now) };
       });
     },

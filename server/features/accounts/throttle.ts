@@ -1,7 +1,7 @@
 import { createHash } from 'node:crypto';
 import type pg from 'pg';
 
-/** Failures without a wait; after them 30 s, doubling up to an hour (safety numbers). */
+/** So many failures are free; the last of them brings 30 s, each further one twice as much, up to an hour. */
 const freeFailures = 5;
 const firstWaitSeconds = 30;
 const longestWaitSeconds = 3600;
@@ -27,8 +27,8 @@ export const admitTry = async (
      on conflict (email_hash) do update set
        failures = case when a.last_at < $2::timestamptz - interval '${forgetAfter}' then 1 else a.failures + 1 end,
        blocked_until = $2::timestamptz + case
-         when a.last_at < $2::timestamptz - interval '${forgetAfter}' or a.failures < $3 then interval '0'
-         else make_interval(secs => least($4 * power(2, least(a.failures - $3, 20)), $5))
+         when a.last_at < $2::timestamptz - interval '${forgetAfter}' or a.failures + 1 < $3 then interval '0'
+         else make_interval(secs => least($4 * power(2, least(a.failures + 1 - $3, 20)), $5))
        end,
        last_at = $2
      where a.blocked_until <= $2`,

@@ -8,7 +8,7 @@ import { messages, threadParticipants, threads } from '../../db/schema/threads.t
 import type { Tx } from '../../db/with-tx.ts';
 import { notify } from '../../notifications/service.ts';
 import { announce } from '../../realtime/announce.ts';
-import { auditOpening, writeAudit } from '../audit/service.ts';
+import { auditOpening, writeAudit, type AuditFact } from '../audit/service.ts';
 import { clinicOf } from '../clinic/queries.ts';
 import {
   lockThread,
@@ -83,7 +83,7 @@ export const openThread = async (
 /** Catching up on an open thread: everything after a sequence, in order, a page at a time. */
 export const readMessages = async (tx: Tx, actor: PersonActor, threadId: string, after: number) => {
   const thread = await threadVisibleTo(tx, actor, threadId);
-  const rows = await messagesAfter(tx, thread, after);
+  const rows = await messagesAfter(tx, thread, Math.min(after, thread.lastSequence));
   return { messages: rows.map(toMessage), lastSequence: thread.lastSequence };
 };
 
@@ -161,6 +161,10 @@ const append = async (
   visible: Pick<ThreadRow, 'clinicId' | 'id'>,
   { id: clientId, text }: { id: string; text: string },
   now: Date,
+  recordedAs: (messageId: string) => AuditFact = (subjectId) => ({
+    action: 'thread.message-posted',
+    subjectId,
+  }),
 ): Promise<Message> => {
   // The thread's row first: it hands out the sequence, and a repeat waits here until the first is decided.
   const thread = await lockThread(tx, visible);
@@ -190,12 +194,7 @@ const append = async (
   const written = await messageByClientId(tx, author);
   if (!written) throw new Error('A message that was just written is not there.');
 
-  await writeAudit(
-    tx,
-    actor,
-    { action: 'thread.message-posted', subjectId: written.id, patientId: thread.patientId },
-    now,
-  );
+  await writeAudit(tx, actor, { ...recordedAs(written.id), patientId: thread.patientId }, now);
   const watchers = await announceThread(tx, thread, lastSequence);
   const [patientPersonId, teamIds] = await receiversOf(tx, thread, watchers);
   const occasion = { kind: 'new-message', occasion: `message:${written.id}` } as const;
@@ -330,14 +329,20 @@ export const replyAboutFlag = async (
     },
     now,
   );
-  if (made) return append(tx, actor, made, message, now);
+  // One entry for the one write: that the flag was answered, and by which message.
+  const recordedAs = (messageId: string): AuditFact => ({
+    action: 'flag.replied',
+    subjectId: flag.id,
+    detail: { messageId },
+  });
+  if (made) return append(tx, actor, made, message, now, recordedAs);
   const rows = await tx
     .select()
     .from(threads)
     .where(and(eq(threads.clinicId, actor.clinicId), eq(threads.flagId, flag.id)));
   const thread = rows[0];
   if (!thread) throw new Problem('state-conflict');
-  return append(tx, actor, thread, message, now);
+  return append(tx, actor, thread, message, now, recordedAs);
 };
 
 export const seeThread = async (

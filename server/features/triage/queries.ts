@@ -4,7 +4,7 @@ import { Problem } from '#shared/problems/problems.ts';
 import type { Finding } from '#shared/red-flags/findings.ts';
 import type { PersonActor } from '../../db/actor.ts';
 import { alerts, checkIns } from '../../db/schema/check-ins.ts';
-import { findings, flagEvents, flags } from '../../db/schema/flags.ts';
+import { findings, flagEventKinds, flagEvents, flags } from '../../db/schema/flags.ts';
 import { careTeamMembers, operationCards, patients } from '../../db/schema/patients.ts';
 import { people, personRoles } from '../../db/schema/people.ts';
 import { threads } from '../../db/schema/threads.ts';
@@ -167,7 +167,15 @@ export const eventsOf = (tx: Tx, flag: FlagRecord) =>
     .from(flagEvents)
     .leftJoin(people, and(eq(people.clinicId, flagEvents.clinicId), eq(people.id, flagEvents.byPersonId)))
     .where(and(eq(flagEvents.clinicId, flag.clinicId), eq(flagEvents.flagId, flag.id)))
-    .orderBy(asc(flagEvents.at), asc(flagEvents.id));
+    .orderBy(
+      asc(flagEvents.at),
+      // What one action does at one instant reads in the order in which it happens.
+      sql`array_position(array[${sql.join(
+        flagEventKinds.map((kind) => sql`${kind}`),
+        sql`, `,
+      )}], ${flagEvents.kind})`,
+      asc(flagEvents.id),
+    );
 
 const earlierShown = 10;
 

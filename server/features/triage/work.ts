@@ -1,4 +1,4 @@
-import { and, eq, inArray } from 'drizzle-orm';
+import { and, eq, inArray, isNull } from 'drizzle-orm';
 import type { z } from 'zod';
 import { localDateIn } from '#shared/plans/calendar.ts';
 import { Problem } from '#shared/problems/problems.ts';
@@ -101,8 +101,9 @@ export const close = async (
         eq(flags.clinicId, flag.clinicId),
         eq(flags.id, flag.id),
         inArray(flags.state, statesWith('close')),
-        // The state that was looked at above must still be the one: a claim in between wins.
+        // What was looked at above must still be so: a claim in between wins.
         eq(flags.state, flag.state),
+        flag.claimedBy === null ? isNull(flags.claimedBy) : eq(flags.claimedBy, flag.claimedBy),
       ),
     )
     .returning({ id: flags.id });
@@ -154,7 +155,6 @@ export const reply = async (
   await tryClaim(tx, actor, flag, now);
   const message = await replyAboutFlag(tx, actor, about, { id, text }, now);
   await addFlagEvent(tx, flag, { kind: 'replied', byPersonId: actor.personId, detail: message.id }, now);
-  await writeAudit(tx, actor, { action: 'flag.replied', subjectId: flag.id, patientId: flag.patientId }, now);
   await announceFlag(tx, flag);
   return { threadId: message.threadId, messageId: message.id, sequence: message.sequence };
 };

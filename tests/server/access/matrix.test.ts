@@ -1,0 +1,171 @@
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { isPublic } from '#server/http/route.ts';
+import { allRoutes } from '#server/routes.ts';
+import { withTx } from '#server/db/with-tx.ts';
+import { cloneDatabase, type TestDatabase } from '#tests/support/database.ts';
+import { startWeb, type TestWeb } from '#tests/support/web.ts';
+import { plantFlag, plantThread } from '../records.ts';
+import { fencedTables, plantWholeClinic, type WholeClinic } from '../whole-clinic.ts';
+import { routeFixtures } from './route-fixtures.ts';
+import { relations, setScene, type Scene } from './scene.ts';
+import { callAsEverybody, keyOf, tableText, type Cell } from './table.ts';
+
+const routes = allRoutes(async () => null);
+const keys = routes.map(keyOf);
+const cellsByRoute = new Map<string, Cell[]>();
+
+let database: TestDatabase;
+let web: TestWeb;
+let scene: Scene;
+
+beforeAll(async () => {
+  database = await cloneDatabase();
+  // One instant for all: two openings of a chart can never fall on the two sides of a five-minute window.
+  const now = new Date();
+  web = await startWeb(database, { clock: () => now });
+  scene = await setScene(database);
+  for (const relation of relations) {
+    for (const { rowsOf } of Object.values(scene.casts)) {
+      await plantFlag(database, rowsOf[relation]);
+      await plantThread(database, rowsOf[relation]);
+    }
+  }
+  for (const route of routes) {
+    cellsByRoute.set(keyOf(route), await callAsEverybody({ database, web, scene }, route));
+  }
+});
+
+afterAll(async () => {
+  await web.stop();
+  await database.drop();
+});
+
+const cellsOf = (key: string): Cell[] => cellsByRoute.get(key) ?? [];
+const nameOf = ({ caller, asked }: Cell): string => `${caller}, ${asked}`;
+const byName = <T>(cells: readonly Cell[], value: (cell: Cell) => T) =>
+  Object.fromEntries(cells.map((cell) => [nameOf(cell), value(cell)]));
+
+it('has a fixture for every route, and none for a route that is gone', () => {
+  expect(Object.keys(routeFixtures).sort()).toEqual([...keys].sort());
+});
+
+describe.each(routes.map((route) => ({ key: keyOf(route), route })))('$key', ({ key, route }) => {
+  it('answers success, 401, 403 and 404 as grants and doors say', () => {
+    const cells = cellsOf(key);
+    expect(cells.length).toBeGreaterThan(0);
+    expect(byName(cells, ({ answer }) => answer.status)).toEqual(
+      byName(cells, ({ expectedStatus }) => expectedStatus),
+    );
+  });
+
+  it('writes its declared audit entry once for a success, one denial for what was refused, else none', () => {
+    const cells = cellsOf(key);
+    const declared = typeof route.audit === 'string' ? route.audit : (routeFixtures[key]?.writes ?? null);
+    const expected = (cell: Cell): string[] => {
+      if (cell.answer.status < 300) return declared === null ? [] : [declared];
+      return cell.caller === 'anonymous' ? [] : ['access.denied'];
+    };
+    expect(byName(cells, ({ audit }) => audit.map(({ action }) => action))).toEqual(byName(cells, expected));
+    for (const { actor, audit } of cells.filter((cell) => cell.actor !== null)) {
+      for (const entry of audit) {
+        expect(entry).toMatchObject({ personId: actor!.personId, clinicId: actor!.clinicId });
+      }
+    }
+  });
+
+  it('names the route and the id asked for in each denial', () => {
+    const denied = cellsOf(key).filter(({ audit }) => audit.some(({ action }) => action === 'access.denied'));
+    expect(denied.length > 0).toBe(!isPublic(route) && route.access.permission !== 'session:own');
+    for (const { audit, id } of denied) {
+      expect(audit[0]?.detail).toEqual({
+        route: key,
+        ...(id === null ? {} : { [routeFixtures[key]!.param!]: id }),
+      });
+    }
+  });
+
+  it('answers for what is not theirs with the same bytes as for what is not there', () => {
+    for (const missing of cellsOf(key).filter(({ asked }) => asked === 'missing')) {
+      const others = cellsOf(key).filter(
+        ({ caller, answer }) => caller === missing.caller && answer.status === missing.answer.status,
+      );
+      for (const other of others) expect(bytesOf(other), nameOf(other)).toEqual(bytesOf(missing));
+    }
+  });
+});
+
+const bytesOf = ({ answer }: Cell) => ({
+  text: answer.text,
+  headers: Object.fromEntries(
+    [...answer.headers].filter(([name]) => name !== 'x-request-id' && name !== 'date'),
+  ),
+});
+
+it('shows in each list the rows that the one who asks may open, and none of another clinic', () => {
+  const seenBy = (key: string) =>
+    Object.fromEntries(
+      cellsOf(key)
+        .filter(({ sees }) => sees !== null)
+        .map(({ caller, sees }) => [caller, sees]),
+    );
+  const wholeClinic = ['own', "colleague's", "other patient's"];
+  expect(seenBy('get /api/flags')).toEqual({
+    therapist: wholeClinic,
+    'on-call-clinician': wholeClinic,
+    'clinical-lead': wholeClinic,
+  });
+  expect(seenBy('get /api/threads')).toEqual({
+    patient: ['own'],
+    therapist: ['own'],
+    'on-call-clinician': wholeClinic,
+    'clinical-lead': wholeClinic,
+  });
+});
+
+it('is the committed table: a changed grant is a changed line', async () => {
+  const text = routes.map((route) => tableText(route, cellsOf(keyOf(route)))).join('\n');
+  await expect(text).toMatchFileSnapshot('matrix.snapshot.txt');
+});
+
+it('joins two openings of a chart within five minutes into one audit entry', async () => {
+  const { actor, rowsOf } = scene.casts.therapist;
+  const { flagId } = await plantFlag(database, rowsOf.own);
+  const desk = await web.signIn(actor);
+  expect((await desk.call('get', `/api/flags/${flagId}`)).status).toBe(200);
+  expect((await desk.call('get', `/api/flags/${flagId}`)).status).toBe(200);
+  const { rows } = await database.asSuperuser.query(
+    `select 1 from audit_entries where action = 'case.opened' and subject_id = $1`,
+    [flagId],
+  );
+  expect(rows).toHaveLength(1);
+});
+
+describe('the fence under the routes', () => {
+  let here: WholeClinic;
+  let there: WholeClinic;
+
+  beforeAll(async () => {
+    here = await plantWholeClinic(database);
+    there = await plantWholeClinic(database);
+  });
+
+  // The audit cannot even be read; what row security does to it is shown by what may be inserted.
+  it.each(fencedTables.filter((table) => table !== 'audit_entries'))(
+    'shows in %s the rows of the clinic that acts, and no other',
+    async (table) => {
+      const clinicsSeen = (actor: Parameters<typeof withTx>[1]) =>
+        withTx(database.pools.app, actor, async (tx) => {
+          const { rows } = await tx.$client.query<{ clinic_id: string }>(
+            `select distinct clinic_id from ${table}`,
+          );
+          return rows.map(({ clinic_id }) => clinic_id);
+        });
+      const { clinicId, therapist } = here;
+      expect(await clinicsSeen({ kind: 'person', clinicId, personId: therapist.personId })).toEqual([
+        clinicId,
+      ]);
+      expect(await clinicsSeen({ kind: 'system', clinicId: there.clinicId })).toEqual([there.clinicId]);
+      expect(await clinicsSeen({ kind: 'anonymous' })).toEqual([]);
+    },
+  );
+});
