@@ -8,7 +8,6 @@ import { RootLayout } from './app/RootLayout.tsx';
 import { Splash } from './app/Splash.tsx';
 import { checkInWords } from './features/check-ins/word-files.ts';
 import { loadWords } from './lib/i18n.ts';
-import { NotFoundPage } from './pages/NotFoundPage.tsx';
 
 /** A screen whose code and files of words are fetched together, when it is gone to. */
 const screen =
@@ -112,7 +111,7 @@ export const createRouter = () =>
           path: '/no-screens',
           lazy: screen(async () => (await import('./pages/NoScreensPage.tsx')).NoScreensPage),
         },
-        { path: '*', element: <NotFoundPage /> },
+        { path: '*', lazy: screen(async () => (await import('./pages/NotFoundPage.tsx')).NotFoundPage) },
       ],
     },
   ]);

@@ -35,7 +35,7 @@ export function AccountMenu({ name, children }: Props) {
     };
   }, [open]);
   return (
-    <div ref={box} className="relative">
+    <div ref={box} className="relative -mr-2">
       <button
         ref={button}
         type="button"
@@ -53,7 +53,7 @@ export function AccountMenu({ name, children }: Props) {
         className="absolute right-0 z-20 mt-1.5 w-max max-w-[calc(100vw-2.5rem)] rounded border border-wire bg-paper p-1.5 shadow-2xl"
       >
         <p className="px-3 py-2 font-bold">{name}</p>
-        <div className="grid justify-items-stretch">{children}</div>
+        <div className="grid justify-items-stretch">{open ? children : null}</div>
       </div>
     </div>
   );

@@ -1,13 +1,15 @@
-import { useState } from 'react';
+import { lazy, Suspense, useState } from 'react';
 import { useTranslation } from 'react-i18next';
 import { Navigate, Outlet, useLocation } from 'react-router-dom';
 import type { Role } from '#shared/access/permissions.ts';
 import { ErrorState } from '#src/components/ErrorState.tsx';
 import { useIsScreenHeld } from './caution-hold.ts';
 import { homeOf } from './home.ts';
-import { SessionGuard } from './SessionGuard.tsx';
 import { MeContext, useSession } from './session.tsx';
 import { Splash } from './Splash.tsx';
+
+/** It watches; nothing waits for it, so it comes after the screen. */
+const SessionGuard = lazy(async () => ({ default: (await import('./SessionGuard.tsx')).SessionGuard }));
 
 type Props = { anyOf: readonly Role[] };
 
@@ -47,8 +49,10 @@ export function RequireRole({ anyOf }: Props) {
   if (!me.roles.some((role) => anyOf.includes(role))) return <Navigate to={homeOf(me.roles)} replace />;
   return (
     <MeContext value={me}>
-      <SessionGuard me={me} />
       <Outlet />
+      <Suspense>
+        <SessionGuard me={me} />
+      </Suspense>
     </MeContext>
   );
 }

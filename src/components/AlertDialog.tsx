@@ -2,6 +2,7 @@ import { AlertDialog as RadixAlertDialog } from 'radix-ui';
 import type { ReactNode } from 'react';
 import { Button } from './Button.tsx';
 import { dialogPanelClass, dialogVeilClass } from './dialog-style.ts';
+import { useReturnFocus } from './return-focus.ts';
 
 type Props = {
   open: boolean;
@@ -18,11 +19,12 @@ type Props = {
  * nothing. It stays open after the answer, so that the caller can show work and failure; the caller closes it.
  */
 export function AlertDialog({ open, onOpenChange, title, description, cancelLabel, confirm }: Props) {
+  const returnFocus = useReturnFocus();
   return (
     <RadixAlertDialog.Root open={open} onOpenChange={onOpenChange}>
       <RadixAlertDialog.Portal>
         <RadixAlertDialog.Overlay className={dialogVeilClass} />
-        <RadixAlertDialog.Content className={dialogPanelClass}>
+        <RadixAlertDialog.Content {...returnFocus} className={dialogPanelClass}>
           <RadixAlertDialog.Title className="text-xl leading-tight">{title}</RadixAlertDialog.Title>
           <RadixAlertDialog.Description asChild>
             <div className="mt-2">{description}</div>

@@ -3,7 +3,7 @@ import type { LucideIcon } from 'lucide-react';
 import type { ReactNode } from 'react';
 import { classNames } from './class-names.ts';
 
-export type BannerTone = 'info' | 'warning' | 'danger';
+type BannerTone = 'info' | 'warning' | 'danger';
 
 const looks: Record<BannerTone, { ground: string; sign: string; icon: LucideIcon }> = {
   info: { ground: 'bg-leaf-wash', sign: 'text-leaf', icon: Info },

@@ -1,6 +1,6 @@
 import type { ReactNode } from 'react';
 
-export type DefinitionRow = { key: string; label: string; cells: ReactNode[] };
+type DefinitionRow = { key: string; label: string; cells: ReactNode[] };
 
 type Props = {
   /** What the table tells; shown only to those who hear it, since a heading stands above. */
@@ -17,13 +17,13 @@ export function DefinitionTable({ caption, columns, rows }: Props) {
       <table className="w-full border-collapse text-left text-[0.9375rem]">
         <caption className="sr-only">{caption}</caption>
         <thead>
-          <tr className="border-b border-wire">
+          <tr className="border-b border-wire @max-md:flex">
             <td className="hidden @md:table-cell" />
             {columns.map((column) => (
               <th
                 key={column}
                 scope="col"
-                className="py-1.5 pr-3 align-bottom text-sm font-bold text-ink-soft last:pr-0"
+                className="py-1.5 pr-3 align-bottom text-sm font-bold text-ink-soft last:pr-0 @max-md:min-w-0 @max-md:flex-1"
               >
                 {column}
               </th>
@@ -34,16 +34,19 @@ export function DefinitionTable({ caption, columns, rows }: Props) {
           {rows.map((row) => (
             <tr
               key={row.key}
-              className="border-b border-wire last:border-b-0 max-@md:grid max-@md:grid-flow-col max-@md:auto-cols-fr max-@md:py-1.5"
+              className="border-b border-wire last:border-b-0 @max-md:flex @max-md:flex-wrap @max-md:py-1.5"
             >
               <th
                 scope="row"
-                className="py-2 pr-3 font-normal max-@md:col-span-full max-@md:py-0 max-@md:font-bold"
+                className="py-2 pr-3 font-normal @max-md:basis-full @max-md:py-0 @max-md:font-bold"
               >
                 {row.label}
               </th>
               {row.cells.map((cell, index) => (
-                <td key={columns[index]} className="py-2 pr-3 last:pr-0 max-@md:row-start-2">
+                <td
+                  key={columns[index]}
+                  className="py-2 pr-3 last:pr-0 @max-md:min-w-0 @max-md:flex-1 @max-md:py-1"
+                >
                   {cell}
                 </td>
               ))}

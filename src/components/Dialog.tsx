@@ -3,6 +3,7 @@ import { Dialog as RadixDialog } from 'radix-ui';
 import type { ReactNode } from 'react';
 import { IconButton } from './IconButton.tsx';
 import { dialogPanelClass, dialogVeilClass } from './dialog-style.ts';
+import { useReturnFocus } from './return-focus.ts';
 
 type Props = {
   open: boolean;
@@ -17,11 +18,13 @@ type Props = {
 
 /** A question or a form over the page; Escape, the cross and a press outside close it. */
 export function Dialog({ open, onOpenChange, title, description, closeLabel, children, footer }: Props) {
+  const returnFocus = useReturnFocus();
   return (
     <RadixDialog.Root open={open} onOpenChange={onOpenChange}>
       <RadixDialog.Portal>
         <RadixDialog.Overlay className={dialogVeilClass} />
         <RadixDialog.Content
+          {...returnFocus}
           className={dialogPanelClass}
           // Without a description Radix must be told so, or it names one that is not there.
           {...(description ? {} : { 'aria-describedby': undefined })}

@@ -2,7 +2,7 @@ import type { LucideIcon } from 'lucide-react';
 import { DropdownMenu as RadixMenu } from 'radix-ui';
 import type { ReactElement, ReactNode } from 'react';
 
-export type MenuItem = { key: string; label: string; icon?: LucideIcon; onSelect: () => void };
+type MenuItem = { key: string; label: string; icon?: LucideIcon; onSelect: () => void };
 
 type Props = {
   /** The button that opens it; it needs a name and must pass its props and its ref on. */
@@ -14,7 +14,7 @@ type Props = {
 
 export function DropdownMenu({ trigger, head, items }: Props) {
   return (
-    <RadixMenu.Root>
+    <RadixMenu.Root modal={false}>
       <RadixMenu.Trigger asChild>{trigger}</RadixMenu.Trigger>
       <RadixMenu.Portal>
         <RadixMenu.Content

@@ -38,7 +38,7 @@ export function NumberGrid({ label, min = 0, max = 10, value, onPick, towards = 
           aria-label={nameOf(number)}
           onClick={() => onPick(number)}
           className={classNames(
-            'min-h-[max(4.375rem,70px)] shrink-0 basis-[max(3.75rem,calc(25%-0.46875rem))] rounded border text-2xl font-black tabular-nums',
+            'min-h-[max(4.375rem,70px)] shrink-0 basis-[max(3rem,calc(25%-0.46875rem))] rounded border text-2xl font-black tabular-nums',
             number === value ? 'picked' : 'border-wire-strong bg-sheet hover:bg-leaf-wash',
           )}
         >

@@ -1,6 +1,6 @@
 import { useId } from 'react';
 
-export type RadioOption<Value extends string> = { value: Value; label: string; detail?: string };
+type RadioOption<Value extends string> = { value: Value; label: string; detail?: string };
 
 type Props<Value extends string> = {
   legend: string;

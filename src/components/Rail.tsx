@@ -23,7 +23,7 @@ export function Rail({ label, menuLabel, items, head, foot }: Props) {
   const foldId = useId();
   return (
     <header className="flex flex-col border-b border-wire bg-paper px-3 py-2 lg:sticky lg:top-0 lg:h-dvh lg:w-54 lg:shrink-0 lg:overflow-y-auto lg:border-r lg:border-b-0 lg:py-5 print:hidden">
-      <div className="flex items-center justify-between gap-3 px-2 lg:mb-4">
+      <div className="flex flex-wrap items-center justify-between gap-x-3 px-2 lg:mb-4">
         {head}
         <button
           type="button"

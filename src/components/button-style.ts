@@ -1,7 +1,7 @@
 import { classNames } from './class-names.ts';
 
-export type ButtonVariant = 'primary' | 'outline' | 'quiet' | 'danger' | 'danger-outline';
-export type ButtonSize = 'normal' | 'large';
+type ButtonVariant = 'primary' | 'outline' | 'quiet' | 'danger' | 'danger-outline';
+type ButtonSize = 'normal' | 'large';
 
 export type ButtonLook = {
   variant?: ButtonVariant;
@@ -27,7 +27,7 @@ const sizes: Record<ButtonSize, string> = {
 export function buttonClass({ variant = 'primary', size = 'normal', block = false }: ButtonLook): string {
   return classNames(
     'relative inline-flex max-w-full items-center justify-center rounded border font-bold',
-    'disabled:border-wire disabled:bg-wire disabled:text-ink-soft disabled:brightness-100',
+    'disabled:border-wire disabled:bg-bark-wash disabled:text-ink-soft disabled:brightness-100',
     variant === 'danger-outline' && 'border-2',
     variants[variant],
     sizes[size],

@@ -79,7 +79,7 @@ export async function call<C extends Contract>(
   input: RequestOf<C>,
   options: { signal?: AbortSignal } = {},
 ): Promise<OutputOf<C>> {
-  const response = await send(method, path, input as Parts, options.signal);
+  const response = await send(method, path, input, options.signal);
   noteServerDate(response.headers.get('date'));
   const build = response.headers.get('x-espalier-build');
   if (build !== null && build !== __BUILD_ID__) buildAnnounced.emit(build);

@@ -1,11 +1,10 @@
-import { problems } from '#shared/problems/problems.ts';
 import type { FieldError, ProblemBody, ProblemCode } from '#shared/problems/problems.ts';
 
 const typePrefix = 'urn:espalier:problem:';
 
+/** The catalogue's own values are not loaded: its texts come with each answer. */
 function codeOf({ type, status }: ProblemBody): ProblemCode {
-  const code = type.startsWith(typePrefix) ? type.slice(typePrefix.length) : '';
-  if (code in problems) return code as ProblemCode;
+  if (type.startsWith(typePrefix)) return type.slice(typePrefix.length) as ProblemCode;
   return status >= 500 ? 'unavailable' : 'malformed-request';
 }
 

@@ -11,7 +11,7 @@ import { CheckInFlow } from '#src/features/check-ins/CheckInFlow.tsx';
 import type { CheckInDraft } from '#src/features/check-ins/draft.ts';
 import { draftFrom, newDraft } from '#src/features/check-ins/draft.ts';
 import { keptNames, storeOf } from '#src/features/check-ins/kept.ts';
-import { useCheckInContext } from '#src/features/check-ins/queries.ts';
+import { useCheckInContext } from '#src/features/check-ins/context-query.ts';
 import { readFromDevice } from '#src/lib/device-store.ts';
 import { telephoneHref } from '#src/lib/format.ts';
 

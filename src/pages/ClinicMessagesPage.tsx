@@ -16,7 +16,7 @@ export function ClinicMessagesPage() {
     <TwoPanes
       openKey={threadId}
       listHead={
-        <div className={classNames('px-5 pt-5 pb-4', threadId !== null && 'max-@4xl/clinic:sr-only')}>
+        <div className={classNames('px-5 pt-5 pb-4', threadId !== null && '@max-4xl/clinic:sr-only')}>
           <h1 ref={heading} tabIndex={-1} className="text-2xl leading-tight">
             Messages
           </h1>
@@ -27,7 +27,7 @@ export function ClinicMessagesPage() {
       detail={
         threadId === null ? (
           <EmptyState icon={MessagesSquare} title="No thread is open.">
-            Choose one of the list. Those that wait on us stand first.
+            Choose one from the list. Those that wait on us stand first.
           </EmptyState>
         ) : (
           <ThreadView threadId={threadId} side="clinic" />

@@ -101,8 +101,7 @@ export function MorningRoundPage() {
         detail={
           flagId === null ? (
             <EmptyState icon={Users} title="No case is open.">
-              Choose one of the queue. The patient is told that you have read it, so it opens only when you
-              choose it.
+              Choose one from the queue. Opening it tells the patient that you have read it.
             </EmptyState>
           ) : (
             <CasePane key={flagId} flagId={flagId} nowMs={nowMs} />

@@ -9,10 +9,11 @@ import { ErrorState } from '#src/components/ErrorState.tsx';
 import { LoadingState } from '#src/components/LoadingState.tsx';
 import { PageHeader } from '#src/components/PageHeader.tsx';
 import { SectionHeading } from '#src/components/SectionHeading.tsx';
+import { classNames } from '#src/components/class-names.ts';
 import { CheckInEntry } from '#src/features/check-ins/CheckInEntry.tsx';
 import { FlagLoop } from '#src/features/check-ins/FlagLoop.tsx';
 import { hasDraft } from '#src/features/check-ins/kept.ts';
-import { usePreparedCheckIn } from '#src/features/check-ins/queries.ts';
+import { usePreparedCheckIn } from '#src/features/check-ins/context-query.ts';
 import { DoList } from '#src/features/plans/DoList.tsx';
 import { HoldOffList } from '#src/features/plans/HoldOffList.tsx';
 import { partOfDay } from '#src/features/plans/part-of-day.ts';
@@ -65,16 +66,23 @@ function Loaded({ today, nowMs }: { today: Today; nowMs: number }) {
   const side = useControlsSide();
   return (
     <div className="mt-4 grid gap-8">
-      <TodayStanding today={today} />
+      <div
+        className={classNames(
+          'grid gap-8 lg:flex lg:items-end lg:justify-between',
+          side === 'left' && 'lg:flex-row-reverse',
+        )}
+      >
+        <TodayStanding today={today} />
+        <CheckInEntry
+          doneAt={today.checkIns.todayAt}
+          begun={{
+            checkIn: hasDraft(me, 'full', today.date),
+            somethingNew: hasDraft(me, 'something-new', today.date),
+          }}
+          side={side}
+        />
+      </div>
       {today.openFlag ? <FlagLoop flag={today.openFlag} clinic={me.clinic} nowMs={nowMs} /> : null}
-      <CheckInEntry
-        doneAt={today.checkIns.todayAt}
-        begun={{
-          checkIn: hasDraft(me, 'full', today.date),
-          somethingNew: hasDraft(me, 'something-new', today.date),
-        }}
-        side={side}
-      />
       <section aria-labelledby="hold-off">
         <SectionHeading id="hold-off" wire>
           {t('holdOff.title')}

@@ -7,6 +7,7 @@ import { EmergencyLine } from '#src/components/EmergencyLine.tsx';
 import { Mark } from '#src/components/Mark.tsx';
 import { SkipLink } from '#src/components/SkipLink.tsx';
 import type { NavigationItem } from '#src/components/navigation.ts';
+import { useResumedAlerts } from '#src/features/check-ins/resume-alerts.ts';
 import { useUnseenMessages } from '#src/features/plans/queries.ts';
 import { telephoneHref } from '#src/lib/format.ts';
 import { useMe } from '../session.tsx';
@@ -20,6 +21,7 @@ export function PatientShell() {
   const { t } = useTranslation();
   const { clinic } = useMe();
   const unseen = useUnseenMessages();
+  useResumedAlerts();
   const places: NavigationItem[] = [
     { to: '/today', label: t('nav.today'), icon: Sprout },
     { to: '/plan', label: t('nav.plan'), icon: ListChecks },

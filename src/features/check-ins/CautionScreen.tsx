@@ -1,9 +1,8 @@
 import { HeartHandshake, Phone } from 'lucide-react';
 import { useEffect, useRef } from 'react';
-import { Trans, useTranslation } from 'react-i18next';
+import { useTranslation } from 'react-i18next';
 import type { ClinicCard } from '#shared/clinic/contract.ts';
 import type { Finding } from '#shared/red-flags/findings.ts';
-import { patientTextOf } from '#shared/red-flags/patient-text.ts';
 import { useHoldScreen } from '#src/app/caution-hold.ts';
 import { Button } from '#src/components/Button.tsx';
 import { LinkButton } from '#src/components/LinkButton.tsx';
@@ -12,6 +11,7 @@ import { classNames } from '#src/components/class-names.ts';
 import { telephoneHref } from '#src/lib/format.ts';
 import type { OutgoingAlert } from './alert-outbox.ts';
 import { AlertStatus } from './AlertStatus.tsx';
+import { findingWords } from './finding-words.ts';
 
 type Props = {
   /** The serious findings, the most urgent first; at least one. */
@@ -49,27 +49,7 @@ export function CautionScreen({ findings, clinic, alertId, entry, onMistake, onG
     heading.current?.focus();
   }, []);
   const look = lookOf(findings);
-  const numbers = {
-    emergencyNumber: clinic.emergencyNumber,
-    crisisNumber: clinic.crisisNumber,
-    onCallNumber: clinic.onCallNumber,
-  };
-  const texts = findings.map((finding) => {
-    const { values, ...keys } = patientTextOf(finding);
-    const words = (key: string) => t(key, { ...numbers, ...values });
-    return {
-      title: words(keys.title),
-      told: words(keys.told),
-      why: words(keys.why),
-      meanwhile: words(keys.meanwhile),
-      next: words(keys.next),
-    };
-  });
-  const unique = (part: 'why' | 'meanwhile' | 'next') => [...new Set(texts.map((text) => text[part]))];
-  const title = texts[0]?.title ?? '';
-  useEffect(() => {
-    document.title = t('common:title', { page: title });
-  }, [t, title]);
+  const words = findingWords(t, findings, clinic);
   return (
     <div className={classNames('base-large min-h-dvh', grounds[look])}>
       <main className="mx-auto grid w-full max-w-xl gap-5 px-5 py-8">
@@ -80,27 +60,22 @@ export function CautionScreen({ findings, clinic, alertId, entry, onMistake, onG
         )}
         <div className="grid gap-2">
           <h1 ref={heading} tabIndex={-1} className="text-3xl leading-tight">
-            {title}
+            {words.title}
           </h1>
           <p className="text-lg leading-snug">
-            <Trans
-              t={t}
-              i18nKey="caution.toldUs"
-              values={{ told: texts.map(({ told }) => told).join('; ') }}
-              components={{ b: <strong /> }}
-            />{' '}
-            {unique('why').slice(0, 2).join(' ')}
+            {t('rules:caution.told')} <strong>{words.told}.</strong> {words.why.slice(0, 2).join(' ')}
           </p>
         </div>
         <Calls look={look} findings={findings} clinic={clinic} />
         <section className="grid gap-2 rounded bg-sheet px-4 py-3.5">
           <h2 className="text-lg">{t('rules:caution.while-you-wait')}</h2>
-          {unique('meanwhile').map((words) => (
-            <p key={words}>{words}</p>
+          {words.meanwhile.map((advice) => (
+            <p key={advice}>{advice}</p>
           ))}
         </section>
         <AlertStatus entry={entry} alertId={alertId} onCallNumber={clinic.onCallNumber} />
-        <p className="text-ink">{unique('next').slice(0, 1)}</p>
+        {/* In an emergency the next thing is the call, and what the clinic knows stands above. */}
+        {look === 'urgent' ? <p>{words.next[0]}</p> : null}
         <div className="grid justify-items-start gap-2">
           <Button variant="outline" onClick={onGoOn}>
             {t('caution.goOn')}

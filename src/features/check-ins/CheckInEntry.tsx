@@ -16,9 +16,9 @@ type Props = {
 export function CheckInEntry({ doneAt, begun, side }: Props) {
   const { t } = useTranslation('today');
   // On a phone the buttons are as wide as the screen; where they are not, they stand on the free hand's side.
-  const place = classNames('grid sm:w-80', side === 'right' && 'sm:ml-auto');
+  const place = classNames('grid sm:max-lg:w-80', side === 'right' && 'sm:max-lg:ml-auto');
   return (
-    <div className="grid gap-3">
+    <div className="grid gap-3 lg:w-70 lg:shrink-0">
       {doneAt === null ? (
         <div className={place}>
           <LinkButton to="/check-in" size="large" block icon={ClipboardCheck}>

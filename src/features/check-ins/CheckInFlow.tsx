@@ -3,6 +3,7 @@ import { useTranslation } from 'react-i18next';
 import { isAnswered } from '#shared/check-ins/answering.ts';
 import { screensFor, secondsLeft } from '#shared/check-ins/walk.ts';
 import { useControlsSide } from '#src/app/free-hand.ts';
+import { useDocumentTitle } from '#src/app/page-heading.ts';
 import { CautionScreen } from './CautionScreen.tsx';
 import { findingsOf, seriousOf } from './danger-watch.ts';
 import { DoneScreen } from './DoneScreen.tsx';
@@ -10,6 +11,7 @@ import type { CheckInDraft } from './draft.ts';
 import { Question } from './Question.tsx';
 import { QuestionFrame } from './QuestionFrame.tsx';
 import { Review } from './Review.tsx';
+import { SendFooter } from './SendFooter.tsx';
 import { SendFailureBanner } from './SendFailureBanner.tsx';
 import { useCheckIn } from './use-check-in.ts';
 import { answerWords, questionWords, usualWords } from './words.ts';
@@ -23,14 +25,11 @@ export function CheckInFlow({ start, firstName }: { start: CheckInDraft; firstNa
   const side = useControlsSide();
   const heading = useRef<HTMLHeadingElement>(null);
   const title = screen ? questionWords(t, screen, context) : '';
+  useDocumentTitle(t(`title.${mode}`));
   const screenId = screen?.id;
   useEffect(() => {
     heading.current?.focus({ preventScroll: true });
   }, [screenId, caution]);
-  useEffect(() => {
-    // The question itself stays out of the title, which other programs can read.
-    document.title = t('common:title', { page: t(`title.${mode}`) });
-  }, [t, mode, caution]);
 
   const findings = findingsOf(answers, context);
   const serious = seriousOf(findings);
@@ -55,11 +54,17 @@ export function CheckInFlow({ start, firstName }: { start: CheckInDraft; firstNa
   if (!screen) return null;
 
   const screens = screensFor(answers, context, mode);
-  const last = screens.find(({ id }) => id === draft.lastAt) ?? null;
-  const lastWords = last
-    ? (usualWords(t, last, answers, context) ??
-      t('answered', { answer: answerWords(t, last, answers, context) ?? '' }))
-    : null;
+  const last = screen.kind === 'note' ? null : screens.find(({ id }) => id === draft.lastAt);
+  const justDone = last
+    ? {
+        words:
+          usualWords(t, last, answers, context) ??
+          t('answered', { answer: answerWords(t, last, answers, context) ?? '' }),
+        onUndo: () => checkIn.undo(last),
+      }
+    : checkIn.takenBack
+      ? { words: t('caution.takenBack'), onUndo: null }
+      : null;
   return (
     <QuestionFrame
       title={title}
@@ -72,10 +77,27 @@ export function CheckInFlow({ start, firstName }: { start: CheckInDraft; firstNa
       }}
       side={side}
       emergencyNumber={me.clinic.emergencyNumber}
-      lastAnswer={last && lastWords ? { words: lastWords, onUndo: () => checkIn.undo(last) } : null}
+      justDone={justDone}
       onNext={screen.kind !== 'note' && isAnswered(screen, answers) ? checkIn.goOn : null}
       onBack={checkIn.goBack}
       backLeaves={checkIn.isFirst}
+      footer={
+        screen.kind === 'note' ? (
+          <SendFooter
+            onSend={checkIn.send}
+            sending={checkIn.post.isPending}
+            failure={
+              checkIn.post.error && !checkIn.post.isPending ? (
+                <SendFailureBanner
+                  error={checkIn.post.error}
+                  onFix={checkIn.change}
+                  onSendAsNew={checkIn.sendAsNew}
+                />
+              ) : null
+            }
+          />
+        ) : null
+      }
     >
       {screen.kind === 'note' ? (
         <Review
@@ -83,17 +105,6 @@ export function CheckInFlow({ start, firstName }: { start: CheckInDraft; firstNa
           side={side}
           onNote={(note) => checkIn.answer({ ...answers, note }, false)}
           onChange={checkIn.change}
-          onSend={checkIn.send}
-          sending={checkIn.post.isPending}
-          failure={
-            checkIn.post.error ? (
-              <SendFailureBanner
-                error={checkIn.post.error}
-                onFix={checkIn.change}
-                onSendAsNew={checkIn.sendAsNew}
-              />
-            ) : null
-          }
         />
       ) : (
         <Question

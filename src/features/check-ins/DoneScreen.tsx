@@ -4,7 +4,6 @@ import { useTranslation } from 'react-i18next';
 import type { CheckInReceipt } from '#shared/check-ins/contract.ts';
 import type { ClinicCard } from '#shared/clinic/contract.ts';
 import type { Finding } from '#shared/red-flags/findings.ts';
-import { patientTextOf } from '#shared/red-flags/patient-text.ts';
 import { EmergencyLine } from '#src/components/EmergencyLine.tsx';
 import { BottomDock } from '#src/components/BottomDock.tsx';
 import { LinkButton } from '#src/components/LinkButton.tsx';
@@ -13,6 +12,7 @@ import type { SignShapeName } from '#src/components/SignShape.tsx';
 import { classNames } from '#src/components/class-names.ts';
 import { useNowMs } from '#src/lib/now.ts';
 import { formatMoment, telephoneHref } from '#src/lib/format.ts';
+import { findingWords } from './finding-words.ts';
 
 type Props = {
   receipt: CheckInReceipt;
@@ -33,47 +33,26 @@ export function DoneScreen({ receipt, findings, firstName, clinic }: Props) {
   const { t } = useTranslation(['check-in-screens', 'rules', 'common']);
   const heading = useRef<HTMLHeadingElement>(null);
   const nowMs = useNowMs();
-  const title = t('done.title', { name: firstName });
   useEffect(() => {
-    document.title = t('common:title', { page: title });
+    window.scrollTo(0, 0);
     heading.current?.focus();
-  }, [t, title]);
-  const numbers = {
-    emergencyNumber: clinic.emergencyNumber,
-    crisisNumber: clinic.crisisNumber,
-    onCallNumber: clinic.onCallNumber,
-  };
+  }, []);
+  const highest = findings.filter(({ urgency }) => urgency === findings[0]?.urgency);
+  const others = findings.filter(({ urgency }) => urgency !== findings[0]?.urgency);
   return (
     <div className="base-large flex min-h-dvh flex-col">
       <main className="mx-auto grid w-full max-w-xl grow content-start gap-5 px-5 py-8">
         <CircleCheck className="size-16 text-leaf" strokeWidth={1.5} aria-hidden />
         <div className="grid gap-1">
           <h1 ref={heading} tabIndex={-1} className="text-2xl leading-tight">
-            {title}
+            {t('done.title', { name: firstName })}
           </h1>
           <p>
             {t('done.sent', { time: formatMoment(receipt.receivedAt, nowMs) })}{' '}
             {receipt.clockDoubtful ? t('done.clock') : null}
           </p>
         </div>
-        {findings.map((finding) => {
-          const { values, ...keys } = patientTextOf(finding);
-          const words = (key: string) => t(key, { ...numbers, ...values });
-          const look = looks[finding.urgency];
-          return (
-            <section key={finding.code} className={classNames('grid gap-2 rounded px-4 py-3.5', look.ground)}>
-              <h2 className="flex items-center gap-2.5 text-lg">
-                <SignShape shape={look.shape} />
-                <span className="min-w-0">{words(keys.title)}</span>
-              </h2>
-              <p>
-                {t('rules:caution.told')} <strong>{words(keys.told)}.</strong> {words(keys.why)}
-              </p>
-              <p>{words(keys.meanwhile)}</p>
-              <p>{words(keys.next)}</p>
-            </section>
-          );
-        })}
+        <Advice findings={highest} others={others} clinic={clinic} />
         <div className="grid gap-2">
           {findings.length === 0 ? <p className="font-bold">{t('done.quiet')}</p> : null}
           <ClinicHours clinic={clinic} nowMs={nowMs} />
@@ -89,6 +68,33 @@ export function DoneScreen({ receipt, findings, firstName, clinic }: Props) {
         </EmergencyLine>
       </BottomDock>
     </div>
+  );
+}
+
+type AdviceProps = { findings: readonly Finding[]; others: readonly Finding[]; clinic: ClinicCard };
+
+/** One text for what is most urgent; what is less so is named after it. */
+function Advice({ findings, others, clinic }: AdviceProps) {
+  const { t } = useTranslation(['check-in-screens', 'rules']);
+  const first = findings[0];
+  if (!first) return null;
+  const look = looks[first.urgency];
+  const words = findingWords(t, findings, clinic);
+  return (
+    <section className={classNames('grid gap-2 rounded px-4 py-3.5', look.ground)}>
+      <h2 className="flex items-center gap-2.5 text-lg">
+        <SignShape shape={look.shape} />
+        <span className="min-w-0">{words.title}</span>
+      </h2>
+      <p>
+        {t('rules:caution.told')} <strong>{words.told}.</strong> {words.why.join(' ')}
+      </p>
+      {words.meanwhile.map((advice) => (
+        <p key={advice}>{advice}</p>
+      ))}
+      <p>{words.next[0]}</p>
+      {others.length > 0 ? <p>{t('done.alsoSeen', { told: findingWords(t, others, clinic).told })}</p> : null}
+    </section>
   );
 }
 

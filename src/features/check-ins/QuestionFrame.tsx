@@ -16,22 +16,23 @@ type Props = {
   progress: { current: number; total: number; seconds: number };
   side: 'left' | 'right';
   emergencyNumber: string;
-  /** The answer just given, shown back beside the person's usual, with the way to take it back. */
-  lastAnswer: { words: string; onUndo: () => void } | null;
+  /** What has just been done, such as the answer beside the person's usual, with the way to take it back. */
+  justDone: { words: string; onUndo: (() => void) | null } | null;
   /** On when the question is answered by more than one press, or was answered before. */
   onNext: (() => void) | null;
   onBack: () => void;
   /** On the first question there is nothing to go back to but the page before. */
   backLeaves: boolean;
+  /** What ends the check-in, at the foot where the thumb is. */
+  footer?: ReactNode;
   children: ReactNode;
 };
 
 /** One question on a screen: where one stands, the question, the answers, and the emergency line. */
 export function QuestionFrame(props: Props) {
-  const { title, hint, headingRef, progress, side, emergencyNumber, lastAnswer } = props;
+  const { title, hint, headingRef, progress, side, emergencyNumber, justDone } = props;
   const { t } = useTranslation('check-in-screens');
   const { t: tCommon } = useTranslation();
-  const towards = side === 'right' ? 'flex-row' : 'flex-row-reverse';
   return (
     <div className="base-large flex min-h-dvh flex-col">
       <header className="mx-auto flex w-full max-w-xl items-center gap-1 px-3 pt-3">
@@ -55,31 +56,29 @@ export function QuestionFrame(props: Props) {
         <div className="mt-4">{props.children}</div>
       </main>
       <BottomDock>
-        <div className="mx-auto grid w-full max-w-xl gap-2 bg-paper px-5 empty:hidden">
-          {/* The region stands from the start, or what arrives in it is not announced. */}
-          <div role="status">
-            {lastAnswer ? (
-              <p className="mt-2 flex items-center gap-3 rounded bg-leaf-wash px-4 py-2.5 leading-snug">
-                <History className="size-6 shrink-0 text-leaf" aria-hidden />
-                <span className="min-w-0">{lastAnswer.words}</span>
-              </p>
+        <div className="mx-auto grid w-full max-w-xl gap-2.5 bg-paper px-5 py-2">
+          <div
+            className={classNames(
+              justDone && 'flex items-center gap-3 rounded bg-leaf-wash px-3 py-1.5 leading-snug',
+              side === 'left' && 'flex-row-reverse',
+            )}
+          >
+            {justDone ? <History className="size-6 shrink-0 text-leaf" aria-hidden /> : null}
+            {/* The region stands from the start, or what arrives in it is not announced. */}
+            <p role="status" className="min-w-0 grow">
+              {justDone?.words}
+            </p>
+            {justDone?.onUndo ? (
+              <Button variant="outline" onClick={justDone.onUndo}>
+                {t('undo')}
+              </Button>
             ) : null}
           </div>
-          {lastAnswer || props.onNext ? (
-            <div className={classNames('flex gap-3 pb-3', towards)}>
-              {lastAnswer ? (
-                <Button variant="outline" onClick={lastAnswer.onUndo}>
-                  {t('undo')}
-                </Button>
-              ) : null}
-              {props.onNext ? (
-                <span className="grid grow">
-                  <Button block iconAfter={ArrowRight} onClick={props.onNext}>
-                    {t('next')}
-                  </Button>
-                </span>
-              ) : null}
-            </div>
+          {props.footer}
+          {props.onNext ? (
+            <Button size="large" block iconAfter={ArrowRight} onClick={props.onNext}>
+              {t('next')}
+            </Button>
           ) : null}
         </div>
         <EmergencyLine label={tCommon('emergency.label')} href={telephoneHref(emergencyNumber)}>

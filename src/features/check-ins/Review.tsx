@@ -1,5 +1,3 @@
-import { Send } from 'lucide-react';
-import type { ReactNode } from 'react';
 import { useTranslation } from 'react-i18next';
 import { noteMaxCharacters } from '#shared/check-ins/note-length.ts';
 import type { Screen } from '#shared/check-ins/screens.ts';
@@ -17,40 +15,25 @@ type Props = {
   side: 'left' | 'right';
   onNote: (note: string) => void;
   onChange: (screen: Screen) => void;
-  onSend: () => void;
-  sending: boolean;
-  /** Why it could not be sent, where it could not. */
-  failure: ReactNode;
 };
 
 /** The counter appears when the end is near. */
 const tellLeftBelow = 200;
 
 /** Everything that was answered, each to be changed, before it is sent. */
-export function Review({ draft, side, onNote, onChange, onSend, sending, failure }: Props) {
+export function Review({ draft, side, onNote, onChange }: Props) {
   const { t } = useTranslation(['check-in-screens', 'check-in', 'plan']);
   const { answers, context, mode } = draft;
   const screens = screensFor(answers, context, mode).filter(({ kind }) => kind !== 'note');
   const open = unanswered(draft).length;
   const left = noteMaxCharacters - (answers.note?.length ?? 0);
-  const send = (
-    <Button size="large" block icon={Send} busy={sending} onClick={onSend}>
-      {t('review.send')}
-    </Button>
-  );
   return (
     <div className="grid gap-6">
-      <div className={classNames('grid gap-3 sm:w-80', side === 'right' && 'sm:ml-auto')}>
-        {/* The region stands from the start, or what arrives in it is not announced. */}
-        <div role="alert" className="empty:hidden">
-          {failure}
-        </div>
-        {open > 0 ? <Banner tone="warning">{t('review.unanswered', { count: open })}</Banner> : null}
-        {send}
-      </div>
+      {open > 0 ? <Banner tone="warning">{t('review.unanswered', { count: open })}</Banner> : null}
       <TextArea
         label={t('review.note')}
         hint={left < tellLeftBelow ? t('review.left', { count: left }) : t('review.noteHint')}
+        rows={2}
         maxLength={noteMaxCharacters}
         value={answers.note ?? ''}
         onChange={(event) => onNote(event.target.value)}

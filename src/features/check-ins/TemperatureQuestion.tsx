@@ -1,6 +1,7 @@
-import { useState } from 'react';
+import { useEffect, useRef, useState } from 'react';
 import { useTranslation } from 'react-i18next';
 import type { Answers, Temperature } from '#shared/check-ins/answers.ts';
+import { Button } from '#src/components/Button.tsx';
 import { ChoiceTile } from '#src/components/ChoiceTile.tsx';
 import { NumberGrid } from '#src/components/NumberGrid.tsx';
 
@@ -27,10 +28,6 @@ export function TemperatureQuestion({ answer, side, onAnswer }: Props) {
   const measured = typeof answer === 'object' ? answer : null;
   const [unit, setUnit] = useState<Unit>(() => measured?.unit ?? usualUnit());
   const [degrees, setDegrees] = useState(measured ? Math.floor(measured.tenths / 10) : null);
-  function changeUnit(next: Unit) {
-    setUnit(next);
-    if (next !== unit) setDegrees(null);
-  }
   return (
     <div className="grid gap-5">
       <ChoiceTile
@@ -38,35 +35,74 @@ export function TemperatureQuestion({ answer, side, onAnswer }: Props) {
         picked={answer === 'not-measured'}
         onClick={() => onAnswer('not-measured')}
       />
-      <div role="group" aria-label={t('temperature.unit')} className="grid grid-cols-2 gap-2.5">
-        {(['F', 'C'] as const).map((code) => (
-          <ChoiceTile key={code} label={`°${code}`} picked={unit === code} onClick={() => changeUnit(code)} />
-        ))}
-      </div>
-      <NumberGrid
-        label={t('temperature.degrees')}
-        {...degreesOf[unit]}
-        value={degrees}
-        onPick={setDegrees}
-        towards={side}
-      />
-      {degrees !== null ? (
-        <section className="grid gap-2" aria-live="polite">
-          <h2 className="text-lg">{t('temperature.tenths', { degrees })}</h2>
+      {degrees === null ? (
+        <>
+          <div role="group" aria-label={t('temperature.unit')} className="grid grid-cols-2 gap-2.5">
+            {(['F', 'C'] as const).map((code) => (
+              <ChoiceTile
+                key={code}
+                label={`°${code}`}
+                picked={unit === code}
+                onClick={() => setUnit(code)}
+              />
+            ))}
+          </div>
           <NumberGrid
-            label={t('temperature.tenths', { degrees })}
-            min={0}
-            max={9}
-            value={
-              measured && measured.unit === unit && Math.floor(measured.tenths / 10) === degrees
-                ? measured.tenths % 10
-                : null
-            }
-            onPick={(tenths) => onAnswer({ unit, tenths: degrees * 10 + tenths })}
+            label={t('temperature.degrees')}
+            {...degreesOf[unit]}
+            value={null}
+            onPick={setDegrees}
             towards={side}
           />
-        </section>
-      ) : null}
+        </>
+      ) : (
+        <Tenths
+          degrees={degrees}
+          unit={unit}
+          picked={measured?.unit === unit && Math.floor(measured.tenths / 10) === degrees ? measured : null}
+          side={side}
+          onPick={(tenths) => onAnswer({ unit, tenths: degrees * 10 + tenths })}
+          onOther={() => setDegrees(null)}
+        />
+      )}
     </div>
+  );
+}
+
+type TenthsProps = {
+  degrees: number;
+  unit: Unit;
+  picked: Temperature | null;
+  side: 'left' | 'right';
+  onPick: (tenths: number) => void;
+  onOther: () => void;
+};
+
+/** The second press, in the place of the first, so that nothing has to be scrolled to. */
+function Tenths({ degrees, unit, picked, side, onPick, onOther }: TenthsProps) {
+  const { t } = useTranslation('check-in-screens');
+  const heading = useRef<HTMLHeadingElement>(null);
+  // The grid that held the focus has gone.
+  useEffect(() => heading.current?.focus({ preventScroll: true }), []);
+  const title = `${t('temperature.tenths', { degrees })} (°${unit})`;
+  return (
+    <section className="grid gap-3">
+      <h2 ref={heading} tabIndex={-1} className="text-lg">
+        {title}
+      </h2>
+      <NumberGrid
+        label={title}
+        min={0}
+        max={9}
+        value={picked ? picked.tenths % 10 : null}
+        onPick={onPick}
+        towards={side}
+      />
+      <div>
+        <Button variant="outline" onClick={onOther}>
+          {t('temperature.other')}
+        </Button>
+      </div>
+    </section>
   );
 }

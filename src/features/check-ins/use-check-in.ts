@@ -41,6 +41,7 @@ export function useCheckIn(start: CheckInDraft) {
   const location = useLocation();
   const [draft, setDraft] = useState(start);
   const [receipt, setReceipt] = useState<CheckInReceipt | null>(null);
+  const [takenBack, setTakenBack] = useState(false);
   const post = usePostCheckIn();
   const outbox = alertOutboxOf(me, queryClient);
   const alerts = useSyncExternalStore(outbox.subscribe, outbox.entries);
@@ -59,6 +60,7 @@ export function useCheckIn(start: CheckInDraft) {
   function save(next: CheckInDraft) {
     keepOnDevice(storeOf(me), keptNames.draft[next.mode], next);
     setDraft(next);
+    setTakenBack(false);
   }
   function goTo(to: string, pushed = true) {
     if (to !== at) void navigate('.', { replace: !pushed, state: { at: to, pushed } satisfies Step });
@@ -76,6 +78,8 @@ export function useCheckIn(start: CheckInDraft) {
   function answer(answers: Answers, advance: boolean) {
     const taken = takeAnswers(draft, answers, at, newId);
     const next = advance ? stepAfter(taken.draft, at, draft.changing) : at;
+    // What was wrong with the earlier answers need not be wrong with these.
+    if (post.isError) post.reset();
     if (taken.alert) {
       outbox.add(
         {
@@ -92,66 +96,74 @@ export function useCheckIn(start: CheckInDraft) {
     if (advance) goTo(next);
   }
 
+  function goOn() {
+    const next = stepAfter(draft, at, draft.changing);
+    save({ ...draft, at: next, lastAt: null });
+    goTo(next);
+  }
+  function undo(last: Screen) {
+    save({ ...draft, answers: withoutAnswer(draft.answers, last), at: last.id, lastAt: null });
+    if (step?.pushed) void navigate(-1);
+    else goTo(last.id, false);
+  }
+  function change(target: Screen) {
+    save({ ...draft, changing: true, at: target.id, lastAt: null });
+    goTo(target.id);
+  }
+  function mistaken() {
+    const { caution } = draft;
+    if (!caution) return;
+    outbox.reportMistake(caution.alertId, { id: newId(), answeredAt: new Date().toISOString() });
+    save({ ...takeBack(draft), lastAt: null });
+    setTakenBack(true);
+    goTo(caution.atBefore);
+  }
+  function send() {
+    const sentAt = new Date().toISOString();
+    const { id, mode, answers } = draft;
+    const note = answers.note?.trim();
+    save({ ...draft, tried: true });
+    post.mutate(
+      {
+        id,
+        kind: mode === 'full' ? 'daily' : 'something-new',
+        answers: note ? { ...answers, note } : withoutNote(answers),
+        answeredAt: sentAt,
+        sentAt,
+        rulesVersion,
+      },
+      {
+        onSuccess: (accepted) => {
+          dropFromDevice(me.personId, keptNames.draft[mode]);
+          setReceipt(accepted);
+        },
+      },
+    );
+  }
+  /** After a conflict: the changed answers go out as a check-in of their own. */
+  function sendAsNew() {
+    post.reset();
+    save({ ...draft, id: newId(), tried: false });
+  }
+
   return {
     me,
     draft,
     screen,
     receipt,
     alerts,
+    takenBack,
     post,
+    isFirst: !step?.pushed && previousScreen(at, draft.answers, draft.context, draft.mode) === null,
     answer,
     goBack,
-    isFirst: !step?.pushed && previousScreen(at, draft.answers, draft.context, draft.mode) === null,
-    goOn() {
-      const next = stepAfter(draft, at, draft.changing);
-      save({ ...draft, at: next, lastAt: null });
-      goTo(next);
-    },
-    undo(last: Screen) {
-      save({ ...draft, answers: withoutAnswer(draft.answers, last), at: last.id, lastAt: null });
-      if (step?.pushed) void navigate(-1);
-      else goTo(last.id, false);
-    },
-    change(target: Screen) {
-      save({ ...draft, changing: true, at: target.id, lastAt: null });
-      goTo(target.id);
-    },
+    goOn,
+    undo,
+    change,
     closeCaution: () => save({ ...draft, caution: null }),
-    mistaken() {
-      const { caution } = draft;
-      if (!caution) return;
-      outbox.reportMistake(caution.alertId, { id: newId(), answeredAt: new Date().toISOString() });
-      save({ ...takeBack(draft), lastAt: null });
-      goTo(caution.atBefore);
-    },
-    send() {
-      const sentAt = new Date().toISOString();
-      const { id, mode, answers } = draft;
-      const note = answers.note?.trim();
-      save({ ...draft, tried: true });
-      post.mutate(
-        {
-          id,
-          kind: mode === 'full' ? 'daily' : 'something-new',
-          answers: note ? { ...answers, note } : withoutNote(answers),
-          answeredAt: sentAt,
-          sentAt,
-          rulesVersion,
-        },
-        {
-          onSuccess: (accepted) => {
-            dropFromDevice(me.personId, keptNames.draft[mode]);
-            setReceipt(accepted);
-          },
-          onError: () => undefined,
-        },
-      );
-    },
-    /** After a conflict: the changed answers go out as a check-in of their own. */
-    sendAsNew() {
-      post.reset();
-      save({ ...draft, id: newId(), tried: false });
-    },
+    mistaken,
+    send,
+    sendAsNew,
   };
 }
 

@@ -17,21 +17,21 @@ type Props = {
 export function TwoPanes({ openKey, listHead, list, detail }: Props) {
   const isOpen = openKey !== null;
   return (
-    <div className="@4xl/clinic:grid @4xl/clinic:h-full @4xl/clinic:grid-cols-[minmax(0,26.5rem)_minmax(0,1fr)]">
+    <div className="@4xl/clinic:grid @4xl/clinic:h-full @4xl/clinic:grid-cols-[minmax(0,25rem)_minmax(0,1fr)]">
       <div
         className={classNames(
           'bg-paper @4xl/clinic:min-h-0 @4xl/clinic:overflow-y-auto @4xl/clinic:border-r @4xl/clinic:border-wire',
-          !isOpen && 'max-@4xl/clinic:pb-6',
+          !isOpen && '@max-4xl/clinic:pb-6',
         )}
       >
         {listHead}
-        <div className={isOpen ? 'max-@4xl/clinic:hidden' : undefined}>{list}</div>
+        <div className={isOpen ? '@max-4xl/clinic:hidden' : undefined}>{list}</div>
       </div>
       <div
         key={openKey}
         className={classNames(
           'min-w-0 bg-sheet px-5 py-4 @4xl/clinic:min-h-0 @4xl/clinic:overflow-y-auto @4xl/clinic:px-7 @4xl/clinic:py-5',
-          !isOpen && 'max-@4xl/clinic:hidden',
+          !isOpen && '@max-4xl/clinic:hidden',
         )}
       >
         {detail}

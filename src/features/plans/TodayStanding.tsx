@@ -14,7 +14,7 @@ export function TodayStanding({ today }: { today: Today }) {
     ? t('review', { week: trellis.review.week, date: formatDate(trellis.review.date) })
     : undefined;
   return (
-    <div>
+    <div className="min-w-0 grow">
       <Trellis
         size="large"
         data={{

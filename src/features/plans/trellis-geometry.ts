@@ -20,7 +20,7 @@ export type TrellisGeometry = {
   review: { x: number; y: number; halfHeight: number } | null;
 };
 
-export type TrellisWire = { code: string; name: string; y: number; knots: number[]; current: boolean };
+type TrellisWire = { code: string; name: string; y: number; knots: number[]; current: boolean };
 
 export type TrellisBranch = {
   code: string;

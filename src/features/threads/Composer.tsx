@@ -1,6 +1,7 @@
 import { useEffect, useEffectEvent, useId } from 'react';
 import { useTranslation } from 'react-i18next';
 import type { Message } from '#shared/threads/contract.ts';
+import { useControlsSide } from '#src/app/free-hand.ts';
 import { useMe } from '#src/app/session.tsx';
 import { Banner } from '#src/components/Banner.tsx';
 import { Button } from '#src/components/Button.tsx';
@@ -18,6 +19,7 @@ type Props = { threadId: string; label: string; messages: readonly Message[]; on
 export function Composer({ threadId, label, messages, onSent }: Props) {
   const { t } = useTranslation('threads');
   const { personId } = useMe();
+  const controlsSide = useControlsSide();
   const { draft, write, renewId, clear } = useDraft(personId, `thread/${threadId}`);
   const post = usePostMessage(threadId);
   const refusal = useRefusal(post.error);
@@ -73,7 +75,8 @@ export function Composer({ threadId, label, messages, onSent }: Props) {
           {wasChanged ? t('composer.changed') : t('composer.notSent', { reason: refusal })}
         </Banner>
       )}
-      <div className="flex justify-end">
+      {/* The button stands where the free hand reaches it. */}
+      <div className={controlsSide === 'left' ? 'flex justify-start' : 'flex justify-end'}>
         <Button type="submit" busy={post.isPending} disabled={draft.text.trim() === ''}>
           {post.isError ? t('composer.again') : t('composer.send')}
         </Button>

@@ -1,5 +1,6 @@
 import { ArrowDown } from 'lucide-react';
 import { useEffect, useLayoutEffect, useRef, useState } from 'react';
+import type { RefObject } from 'react';
 import { useTranslation } from 'react-i18next';
 import type { Message, ThreadDetail } from '#shared/threads/contract.ts';
 import { useMe } from '#src/app/session.tsx';
@@ -15,13 +16,15 @@ import type { Side } from './seen-mark.ts';
 import { entriesOf } from './thread-entries.ts';
 
 /** How many messages are drawn at first, and with each look further back. */
-const shownAtOnce = 60;
+const shownAtOnce = 40;
 
 type Props = {
   thread: ThreadDetail;
   messages: readonly Message[];
   side: Side;
-  /** The newest message that a person here has sent since the thread was opened: the view follows it. */
+  /** What grows with the messages, with a text being written, and when the fonts arrive. */
+  frame: RefObject<HTMLElement | null>;
+  /** How many messages have been sent from here since the thread was opened: the view follows each. */
   followOwn: number;
 };
 
@@ -29,7 +32,7 @@ type Props = {
  * The messages, opened at their end. What arrives moves the view only for whoever is at the end; others keep
  * their place and get a button. It is there only once all messages are known.
  */
-export function MessageLog({ thread, messages, side, followOwn }: Props) {
+export function MessageLog({ thread, messages, side, frame, followOwn }: Props) {
   const { t } = useTranslation('threads');
   const { personId, clinic } = useMe();
   const nowMs = useNowMs();
@@ -47,16 +50,26 @@ export function MessageLog({ thread, messages, side, followOwn }: Props) {
   if (endInView && lookedAt !== count) setLookedAt(count);
   const below = count - lookedAt;
 
-  const wasAtEnd = useRef(true);
+  const staysAtEnd = useRef(true);
   useEffect(() => {
-    if (wasAtEnd.current && end.current) scrollToEnd(end.current);
-  }, [count]);
-  useEffect(() => {
+    staysAtEnd.current = true;
     if (end.current) scrollToEnd(end.current);
   }, [followOwn]);
   useEffect(() => {
-    wasAtEnd.current = endInView;
+    if (!endInView) return undefined;
+    staysAtEnd.current = true;
+    return () => {
+      staysAtEnd.current = false;
+    };
   }, [endInView]);
+  useEffect(() => {
+    if (!frame.current) return undefined;
+    const observer = new ResizeObserver(() => {
+      if (staysAtEnd.current && end.current) scrollToEnd(end.current);
+    });
+    observer.observe(frame.current);
+    return () => observer.disconnect();
+  }, [frame]);
 
   useLayoutEffect(() => {
     restorePlace.current?.();
@@ -65,6 +78,7 @@ export function MessageLog({ thread, messages, side, followOwn }: Props) {
   function showEarlier() {
     const first = list.current?.querySelector('li');
     if (first) restorePlace.current = holdPlace(first);
+    staysAtEnd.current = false;
     setFrom(Math.max(0, from - shownAtOnce));
   }
 

@@ -6,6 +6,7 @@ import { useTranslation } from 'react-i18next';
 import { useNavigate } from 'react-router-dom';
 import type { z } from 'zod';
 import { postThreadBody } from '#shared/threads/contract.ts';
+import { useControlsSide } from '#src/app/free-hand.ts';
 import { useMe } from '#src/app/session.tsx';
 import { Banner } from '#src/components/Banner.tsx';
 import { Button } from '#src/components/Button.tsx';
@@ -32,6 +33,7 @@ const wrongs: Record<string, 'missing' | 'long' | 'characters'> = {
 export function NewThreadForm() {
   const { t } = useTranslation('threads');
   const { personId, clinic } = useMe();
+  const controlsSide = useControlsSide();
   const navigate = useNavigate();
   const subject = useDraft(personId, 'new-thread/subject');
   const text = useDraft(personId, 'new-thread/text');
@@ -107,7 +109,8 @@ export function NewThreadForm() {
           {wasChanged ? t('composer.changed') : t('composer.notSent', { reason: refusal })}
         </Banner>
       )}
-      <div>
+      {/* The button stands where the free hand reaches it. */}
+      <div className={controlsSide === 'left' ? 'flex justify-start' : 'flex justify-end'}>
         <Button type="submit" size="large" busy={post.isPending}>
           {t('new.send')}
         </Button>

@@ -3,6 +3,7 @@ import type { RefObject } from 'react';
 import { useTranslation } from 'react-i18next';
 import type { ThreadDetail } from '#shared/threads/contract.ts';
 import { Button } from '#src/components/Button.tsx';
+import { classNames } from '#src/components/class-names.ts';
 import { LinkButton } from '#src/components/LinkButton.tsx';
 import { Wire } from '#src/components/Wire.tsx';
 import { threadListPlace } from './places.ts';
@@ -27,7 +28,13 @@ export function ThreadHead({ thread, side, headingRef }: Props) {
   // A patient's page has this as its first heading; beside the clinic's list it stands below that.
   const Heading = isClinic ? 'h2' : 'h1';
   return (
-    <header className="mb-3">
+    <header
+      className={classNames(
+        'mb-3',
+        isClinic &&
+          'z-10 bg-sheet @4xl/clinic:-mt-5 @4xl/clinic:pt-5 @4xl/clinic:[@media(min-height:34em)]:sticky @4xl/clinic:[@media(min-height:34em)]:-top-5',
+      )}
+    >
       <div className={isClinic ? '-ml-4 @4xl/clinic:hidden' : '-ml-4'}>
         <LinkButton to={threadListPlace(side)} variant="quiet" icon={ArrowLeft}>
           {t('thread.toList')}

@@ -60,18 +60,19 @@ function OpenThread({ thread, messages, side }: OpenThreadProps) {
   const { clinic } = useMe();
   const heading = useRef<HTMLHeadingElement>(null);
   useEffect(() => heading.current?.focus({ preventScroll: true }), []);
+  const frame = useRef<HTMLElement>(null);
   const [sentHere, setSentHere] = useState(0);
   const isClinic = side === 'clinic';
   return (
-    <article className={classNames('flex flex-col', isClinic && 'min-h-full')}>
+    <article ref={frame} className={classNames('flex flex-col', isClinic && 'min-h-full')}>
       <ThreadHead thread={thread} side={side} headingRef={heading} />
-      <MessageLog thread={thread} messages={messages} side={side} followOwn={sentHere} />
+      <MessageLog thread={thread} messages={messages} side={side} frame={frame} followOwn={sentHere} />
       <div
         className={classNames(
           'grid gap-3 pt-3',
           // A patient's page keeps its own bar at the foot, and two of them would cover what is read.
           isClinic &&
-            'z-10 -mb-4 bg-sheet pb-4 @4xl/clinic:-mb-5 @4xl/clinic:pb-5 [@media(min-height:34em)]:sticky [@media(min-height:34em)]:bottom-0',
+            'z-10 -mb-4 bg-sheet pb-4 @4xl/clinic:-mb-5 @4xl/clinic:pb-5 [@media(min-height:34em)]:sticky [@media(min-height:34em)]:bottom-0 @4xl/clinic:[@media(min-height:34em)]:-bottom-5',
         )}
       >
         {thread.state === 'closed' ? <p className="text-ink-soft">{t(`closed.${side}`)}</p> : null}

@@ -13,6 +13,17 @@ const numberOf = (usual: string | null): number | null => {
   return Number.isNaN(value) ? null : value;
 };
 
+function NotKnown() {
+  return (
+    <>
+      <span aria-hidden className="text-ink-soft">
+        –
+      </span>
+      <span className="sr-only">not known</span>
+    </>
+  );
+}
+
 /** What was answered beside the person's own usual, and what they wrote with it. */
 export function BesideUsual({ flag, timeZone, nowMs }: Props) {
   const answered = formatMoment(flag.answeredAt, nowMs, timeZone);
@@ -33,7 +44,7 @@ export function BesideUsual({ flag, timeZone, nowMs }: Props) {
             label,
             cells: [
               <strong key="today">{today}</strong>,
-              usual ?? <span className="text-ink-soft">not known</span>,
+              usual ?? <NotKnown key="usual" />,
               days14 ? (
                 <Sparkline
                   key="days"

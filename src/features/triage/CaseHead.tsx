@@ -32,7 +32,7 @@ export function CaseHead({ flag, headingRef, claim, release }: Props) {
           <h2 ref={headingRef} tabIndex={-1} className="text-2xl leading-tight">
             {patient.name}, {person.age}
           </h2>
-          <p className="mt-1 text-ink-soft">
+          <p className="mt-1 text-ink-soft first-letter:uppercase">
             {longOperation(patient)} · day {patient.day}, {person.phase} phase · {person.surgeon}
           </p>
         </div>

@@ -1,5 +1,4 @@
-import { lazy, Suspense, useEffect, useRef } from 'react';
-import { useSearchParams } from 'react-router-dom';
+import { lazy, Suspense, useEffect, useRef, useState } from 'react';
 import type { FlagCase } from '#shared/triage/contract.ts';
 import { afterMove } from '#shared/triage/lifecycle.ts';
 import { useMe } from '#src/app/session.tsx';
@@ -53,16 +52,10 @@ export function CasePane({ flagId, nowMs }: Props) {
   );
 }
 
-/** Which form is open stands in the address, so that a reload comes back to it. */
-type OpenForm = 'reply' | 'close';
-
 function Case({ flag, nowMs }: { flag: FlagCase; nowMs: number }) {
   const me = useMe();
   const { timeZone } = me.clinic;
-  const [search, setSearch] = useSearchParams();
-  const openForm = search.get('open');
-  const setOpenForm = (form: OpenForm | null) =>
-    setSearch(form === null ? {} : { open: form }, { replace: true, preventScrollReset: true });
+  const [openForm, setOpenForm] = useState<'reply' | 'close' | null>(null);
   const claim = useClaimFlag(flag.id);
   const release = useReleaseFlag(flag.id);
   const reply = useDraft(me.personId, `flag/${flag.id}`);
@@ -101,12 +94,12 @@ function Case({ flag, nowMs }: { flag: FlagCase; nowMs: number }) {
         {closedNotice}
       </div>
       <SafetyFacts person={flag.person} />
-      <div className="mt-6 grid items-start gap-x-8 gap-y-7 @3xl/case:grid-cols-[minmax(0,1fr)_minmax(0,20rem)]">
+      <div className="mt-6 grid items-start gap-x-7 gap-y-7 @2xl/case:grid-cols-[minmax(0,1fr)_minmax(0,18rem)]">
         <div className="grid gap-7">
           <CaseReasons reasons={flag.reasons} />
           <BesideUsual flag={flag} timeZone={timeZone} nowMs={nowMs} />
         </div>
-        <div className="grid gap-7 @3xl/case:row-span-2">
+        <div className="grid gap-7 @2xl/case:row-span-2">
           <WhatNext
             flag={flag}
             isMine={isMine}
@@ -126,7 +119,11 @@ function Case({ flag, nowMs }: { flag: FlagCase; nowMs: number }) {
           <CloseFlagDialog
             flag={flag}
             onOpenChange={(open) => setOpenForm(open ? 'close' : null)}
-            onClosed={() => setOpenForm(null)}
+            onClosed={() => {
+              setOpenForm(null);
+              // After the dialog has given the focus back to what is no longer there.
+              setTimeout(() => heading.current?.focus(), 0);
+            }}
             notice={closedNotice}
           />
         </Suspense>

@@ -26,6 +26,12 @@ const worthOptions = [
   { value: 'no' as const, label: 'No' },
 ];
 
+/** The form is longer than a small screen, and what is wrong may stand above what is seen. */
+function focusFirst(form: HTMLFormElement, wrong: Partial<Record<keyof Values, unknown>>): void {
+  const first = fields.find((name) => wrong[name] !== undefined);
+  form.querySelector<HTMLElement>(`[name="${first ?? ''}"]`)?.focus();
+}
+
 type Props = {
   flag: FlagCase;
   onOpenChange: (open: boolean) => void;
@@ -38,6 +44,7 @@ type Props = {
 export function CloseFlagDialog({ flag, onOpenChange, onClosed, notice }: Props) {
   const close = useCloseFlag(flag.id);
   const { control, register, handleSubmit, setError, formState } = useForm<Values, unknown, Body>({
+    shouldFocusError: false,
     resolver: zodResolver(closeFlagBody),
     defaultValues: { note: '' },
   });
@@ -81,7 +88,10 @@ export function CloseFlagDialog({ flag, onOpenChange, onClosed, notice }: Props)
         id="close-flag"
         noValidate
         className="grid gap-6"
-        onSubmit={(event) => void handleSubmit(submit)(event)}
+        onSubmit={(event) => {
+          const form = event.currentTarget;
+          void handleSubmit(submit, (wrong) => focusFirst(form, wrong))(event);
+        }}
       >
         <Controller
           control={control}

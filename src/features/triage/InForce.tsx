@@ -16,13 +16,11 @@ export function InForce({ flag }: { flag: FlagCase }) {
         <ul className="grid gap-2 text-[0.9375rem] leading-snug">
           {flag.inForce.map((precaution) => (
             <li key={precaution.code}>
-              {precaution.text}{' '}
-              <span className="text-ink-soft">· usually lifted {formatDate(precaution.usualDate)}</span>
-              {precaution.due ? (
-                <span className="ml-2">
-                  <Tag tone="ochre">Sign-off due</Tag>
-                </span>
-              ) : null}
+              {precaution.text.replace(/\.$/u, '')},{' '}
+              <span className="inline-block text-ink-soft">
+                usually to {formatDate(precaution.usualDate)}
+              </span>{' '}
+              {precaution.due ? <Tag tone="ochre">Sign-off due</Tag> : null}
             </li>
           ))}
         </ul>

@@ -30,8 +30,12 @@ export function Queue({ flags, quiet, selectedId, newIds, meId, timeZone, nowMs 
   }
   return groupQueue(flags).map((group) => (
     <section key={group.urgency} aria-labelledby={`queue-${group.urgency}`} className="mt-5">
-      <h2 id={`queue-${group.urgency}`} className="border-b border-wire px-5 pb-2 text-sm tracking-normal">
-        <UrgencySign urgency={group.urgency} strong /> · {group.flags.length}
+      <h2
+        id={`queue-${group.urgency}`}
+        className="flex items-center gap-1.5 border-b border-wire px-5 pb-2 text-sm tracking-normal"
+      >
+        <UrgencySign urgency={group.urgency} strong />
+        <span>· {group.flags.length}</span>
       </h2>
       <ul>
         {group.flags.map((flag) => (

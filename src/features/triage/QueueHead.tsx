@@ -18,7 +18,7 @@ export function QueueHead({ round, headingRef, latest, caseOpen }: Props) {
   const newest = latest[0];
   return (
     <div className="px-5 @4xl/clinic:pt-5">
-      <div className={classNames('max-@4xl/clinic:pt-4', caseOpen && 'max-@4xl/clinic:sr-only')}>
+      <div className={classNames('@max-4xl/clinic:pt-4', caseOpen && '@max-4xl/clinic:sr-only')}>
         <h1 ref={headingRef} tabIndex={-1} className="text-2xl leading-tight">
           <span className="sr-only">Morning round, </span>
           {round ? roundDate(round.date) : 'today'}
@@ -31,7 +31,10 @@ export function QueueHead({ round, headingRef, latest, caseOpen }: Props) {
         ) : null}
       </div>
       {/* The live region stands empty until then, or what arrives in it is not announced. */}
-      <p role="status" className="min-h-6 text-sm leading-6 font-bold">
+      <p
+        role="status"
+        className={classNames('min-h-6 text-sm leading-6 font-bold', caseOpen && '@max-4xl/clinic:min-h-0')}
+      >
         {newest ? (
           <NewsLink flagId={newest.id}>
             New: {announcementOf(newest)}

@@ -21,22 +21,26 @@ function WithCallLink({ text }: { text: string }) {
   );
 }
 
-/** What must not be overlooked before anything is advised. Facts that are not known say so. */
+/** "none" is a fact on record; nothing on record is not the same, and is said so. */
+function thinnerWords(bloodThinner: string | null): string {
+  if (bloodThinner === null) return 'Blood thinner: not recorded, so ask.';
+  return isNone(bloodThinner) ? 'No blood thinner.' : `Takes a blood thinner: ${bloodThinner}.`;
+}
+
+const isNone = (fact: string): boolean => /^(none|no|nil)\b/iu.test(fact.trim());
+
+/** What must not be overlooked before anything is advised. */
 export function SafetyFacts({ person }: { person: FlagCase['person'] }) {
   const { bloodThinner, allergies } = person;
-  const danger = bloodThinner !== null || allergies !== null;
+  // The colour only supports the words: a fact is always shown as it was recorded.
+  const danger = [bloodThinner, allergies].some((fact) => fact === null || !isNone(fact));
   return (
     <section
       aria-label="Safety facts"
       className={classNames('rounded px-4 py-3 leading-snug', danger ? 'bg-clay-wash' : 'bg-bark-wash')}
     >
-      <p>
-        {bloodThinner === null ? (
-          'No blood thinner on record.'
-        ) : (
-          <strong>Takes a blood thinner: {bloodThinner}.</strong>
-        )}{' '}
-        {allergies === null ? 'No allergy on record.' : <strong>Allergies: {allergies}.</strong>}
+      <p className={danger ? 'font-bold' : undefined}>
+        {thinnerWords(bloodThinner)} Allergies: {allergies ?? 'not recorded, so ask'}.
       </p>
       <p className="mt-1 text-sm">
         Emergency contact: <WithCallLink text={person.emergencyContact} /> · Chart {person.chartNumber} ·

@@ -1,3 +1,4 @@
+import { useEffect, useRef, useState } from 'react';
 import { Check, MessageSquare, MessagesSquare } from 'lucide-react';
 import type { FlagCase } from '#shared/triage/contract.ts';
 import { Button } from '#src/components/Button.tsx';
@@ -31,6 +32,13 @@ function holderWords({ claimedBy, claimedAt, state }: FlagCase, isMine: boolean,
 /** The moves there are, and who has the flag. */
 export function WhatNext(props: Props) {
   const { flag, isMine, reply, replyOpen, onReply, onClose, timeZone, nowMs } = props;
+  const replyButton = useRef<HTMLButtonElement>(null);
+  const wasOpen = useRef(replyOpen);
+  useEffect(() => {
+    if (wasOpen.current && !replyOpen) replyButton.current?.focus();
+    wasOpen.current = replyOpen;
+  }, [replyOpen]);
+  const [sent, setSent] = useState(false);
   const firstName = firstNameOf(flag.patient.name);
   const since = flag.claimedAt === null ? '' : formatMoment(flag.claimedAt, nowMs, timeZone);
   return (
@@ -44,14 +52,30 @@ export function WhatNext(props: Props) {
           <ReplyForm
             flag={flag}
             reply={reply}
-            onSent={() => onReply(false)}
+            onSent={() => {
+              setSent(true);
+              onReply(false);
+            }}
             onCancel={() => onReply(false)}
           />
         ) : (
-          <Button block variant="outline" icon={MessageSquare} onClick={() => onReply(true)}>
+          <Button
+            ref={replyButton}
+            block
+            variant="outline"
+            icon={MessageSquare}
+            onClick={() => {
+              setSent(false);
+              onReply(true);
+            }}
+          >
             {reply.draft.text === '' ? `Reply to ${firstName}` : `Go on with the reply to ${firstName}`}
           </Button>
         )}
+        {/* The live region stands empty until then, or what arrives in it is not announced. */}
+        <p role="status" className="text-sm font-bold text-leaf empty:-mt-3">
+          {sent ? `Sent. ${firstName} has been told.` : null}
+        </p>
         {flag.threadId === null ? null : (
           <LinkButton block variant="outline" icon={MessagesSquare} to={`/clinic/messages/${flag.threadId}`}>
             Open the thread

@@ -35,7 +35,7 @@ export function aCase(given: Partial<FlagCase> = {}): FlagCase {
         ruleVersion: 1,
         urgency: 'urgent',
         title: 'Fall with injury',
-        sentence: 'A fall, and pain is 8, which is 5 above the usual 3.',
+        sentence: 'A fall, and pain is 8, which is 5 above the usual 3. Rule fall-with-injury, version 1.',
         source: 'Default of ours (D)',
       },
     ],

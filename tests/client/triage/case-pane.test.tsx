@@ -1,0 +1,149 @@
+import { act, screen, waitFor } from '@testing-library/react';
+import { userEvent } from '@testing-library/user-event';
+import { beforeEach, describe, expect, it } from 'vitest';
+import { Problem } from '#shared/problems/problems.ts';
+import type { FlagCase } from '#shared/triage/contract.ts';
+import { CasePane } from '#src/features/triage/CasePane.tsx';
+import { noorSignedIn, serve, showTo } from '../clinic/screen.tsx';
+import { aCase, callum, flagId, noor } from './flags.ts';
+
+const nowMs = Date.parse('2026-12-01T12:30:00.000Z');
+const casePath = `/api/flags/${flagId}`;
+const heldBy = (person: typeof noor): Partial<FlagCase> => ({
+  state: 'claimed',
+  claimedBy: person,
+  claimedAt: '2026-12-01T12:02:00.000Z',
+});
+
+let current: FlagCase;
+beforeEach(() => {
+  sessionStorage.clear();
+  current = aCase();
+});
+
+function serveCase(more: Parameters<typeof serve>[0] = {}) {
+  return serve({
+    [`GET ${casePath}`]: () => current,
+    [`POST ${casePath}/seen`]: () => undefined,
+    ...more,
+  });
+}
+const show = () => showTo(noorSignedIn, <CasePane flagId={flagId} nowMs={nowMs} />);
+
+describe('an open case', () => {
+  it('is recorded as seen once, however often it is fetched again', async () => {
+    const sent = serveCase();
+    const { queryClient } = await show();
+    await screen.findByRole('heading', { name: /Tobias Ahlgren/ });
+    await act(() => queryClient.invalidateQueries());
+    await waitFor(() => expect(sent.filter(({ path }) => path === casePath)).toHaveLength(2));
+    expect(sent.filter(({ path }) => path === `${casePath}/seen`)).toHaveLength(1);
+  });
+
+  it('gives its reason with the rule, its version and its source, and the safety facts', async () => {
+    serveCase();
+    await show();
+    expect(await screen.findByText(/pain is 8, which is 5 above the usual 3/)).toBeTruthy();
+    expect(screen.getByText(/Rule fall-with-injury, version 1\./)).toBeTruthy();
+    expect(screen.getByText(/Source: Default of ours/)).toBeTruthy();
+    expect(screen.getByText(/Takes a blood thinner: apixaban/)).toBeTruthy();
+    expect(screen.getByRole('link', { name: '555-0143' }).getAttribute('href')).toBe('tel:5550143');
+  });
+
+  it('says who has it when a colleague’s claim came first, and shows their claim', async () => {
+    serveCase({
+      [`POST ${casePath}/claim`]: () => {
+        current = aCase(heldBy(callum));
+        return new Problem('claimed-by-other', undefined, { claimedBy: callum.name });
+      },
+    });
+    await show();
+    await userEvent.click(await screen.findByRole('button', { name: 'Claim' }));
+    expect((await screen.findByRole('alert')).textContent).toContain('Callum Reyes has claimed this flag.');
+    expect(screen.queryByRole('button', { name: 'Claim' })).toBeNull();
+    expect(screen.queryByRole('button', { name: 'Close with an outcome' })).toBeNull();
+  });
+
+  it('keeps a reply that was refused, and sends it again under the same id', async () => {
+    const answers = [
+      () => new Problem('unavailable'),
+      () => {
+        current = aCase(heldBy(noor));
+        return { threadId: flagId, messageId: flagId, sequence: 1 };
+      },
+    ];
+    const sent = serveCase({ [`POST ${casePath}/replies`]: () => answers.shift()?.() });
+    await show();
+    await userEvent.click(await screen.findByRole('button', { name: 'Reply to Tobias' }));
+    const box = screen.getByRole<HTMLTextAreaElement>('textbox', { name: 'Reply to Tobias' });
+    await userEvent.type(box, 'Keep the sling on.');
+    await userEvent.click(screen.getByRole('button', { name: 'Send' }));
+    expect((await screen.findByRole('alert')).textContent).toContain('Your text is kept here.');
+    expect(box.value).toBe('Keep the sling on.');
+    await userEvent.click(screen.getByRole('button', { name: 'Send' }));
+    await waitFor(() => expect(screen.queryByRole('textbox')).toBeNull());
+    const [first, second] = sent.filter(({ path }) => path.endsWith('/replies'));
+    expect(second?.body).toEqual(first?.body);
+  });
+
+  it('says that a colleague has closed it meanwhile, and keeps the reply that was being written', async () => {
+    serveCase();
+    const { queryClient } = await show();
+    await userEvent.click(await screen.findByRole('button', { name: 'Reply to Tobias' }));
+    await userEvent.type(screen.getByRole('textbox'), 'Please call');
+    current = aCase({
+      state: 'closed',
+      outcome: 'advised-by-phone',
+      events: [
+        {
+          id: 'e2',
+          kind: 'closed',
+          at: '2026-12-01T12:20:00.000Z',
+          by: callum.name,
+          detail: 'advised-by-phone',
+        },
+      ],
+    });
+    await act(() => queryClient.invalidateQueries());
+    expect(await screen.findByText('Callum Reyes closed this flag at 07:20: advised by phone.')).toBeTruthy();
+    expect(screen.getByRole<HTMLTextAreaElement>('textbox').value).toBe('Please call');
+  });
+});
+
+describe('closing a flag', () => {
+  async function openForm(more: Parameters<typeof serve>[0] = {}) {
+    const sent = serveCase(more);
+    await show();
+    await userEvent.click(await screen.findByRole('button', { name: 'Close with an outcome' }));
+    await screen.findByRole('dialog');
+    return sent;
+  }
+  const choose = (name: string) => userEvent.click(screen.getByRole('radio', { name }));
+  const submit = () => userEvent.click(screen.getByRole('button', { name: 'Close the flag' }));
+
+  it('asks for an outcome, and for the words that some outcomes need, and sends nothing before', async () => {
+    const sent = await openForm();
+    await submit();
+    expect(await screen.findByText('Choose an outcome.')).toBeTruthy();
+    expect(screen.getByText('Say whether it was worth raising.')).toBeTruthy();
+    await choose('No action needed');
+    await choose('No');
+    await submit();
+    await waitFor(() =>
+      expect(screen.getByRole('textbox').getAttribute('aria-invalid'), 'the note is asked for').toBe('true'),
+    );
+    expect(sent.filter(({ path }) => path.endsWith('/close'))).toEqual([]);
+  });
+
+  it('puts what the server refused beside its field and keeps what was chosen', async () => {
+    await openForm({
+      [`POST ${casePath}/close`]: () =>
+        new Problem('invalid-input', undefined, { errors: [{ field: 'note', message: 'Name who it was.' }] }),
+    });
+    await choose('Advised by phone');
+    await choose('Yes');
+    await submit();
+    expect(await screen.findByText('Name who it was.')).toBeTruthy();
+    expect(screen.getByRole<HTMLInputElement>('radio', { name: 'Advised by phone' }).checked).toBe(true);
+  });
+});
