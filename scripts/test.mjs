@@ -4,6 +4,7 @@ import { join } from 'node:path';
 import { ensureInstalled } from './install.mjs';
 import { localFolder, root } from './places.mjs';
 import { say } from './say.mjs';
+import { countPlaywright, countVitest, ONE_FAILED } from './test-counts.mjs';
 
 /** Runs a program to its end with its output on the terminal, and returns its exit code. */
 function show(command, args, env = {}) {
@@ -34,32 +35,12 @@ function readReport(path) {
   }
 }
 
-/** A runner that failed without naming a failed test, or left no report, counts as one failed. */
-function counted({ passed, failed, skipped }, exitCode) {
-  return { passed, failed: exitCode !== 0 ? Math.max(failed, 1) : failed, skipped };
-}
-
-const NOTHING = { passed: 0, failed: 0, skipped: 0 };
-
 async function runVitest(filters) {
   const report = join(localFolder('test-reports'), 'vitest.json');
   rmSync(report, { force: true });
   const args = ['run', '--reporter=default', '--reporter=json', `--outputFile.json=${report}`, ...filters];
   const exitCode = await show(join(root, 'node_modules/.bin/vitest'), args);
-  const result = readReport(report);
-  if (result === null) return counted(NOTHING, 1);
-  // A file that could not be loaded has no tests in the report, but is a failure all the same.
-  const brokenFiles = result.testResults.filter(
-    (file) => file.status === 'failed' && file.assertionResults.every((test) => test.status !== 'failed'),
-  );
-  return counted(
-    {
-      passed: result.numPassedTests,
-      failed: result.numFailedTests + brokenFiles.length,
-      skipped: result.numPendingTests + result.numTodoTests,
-    },
-    exitCode,
-  );
+  return countVitest(readReport(report), exitCode);
 }
 
 async function runPlaywright(filters) {
@@ -68,10 +49,7 @@ async function runPlaywright(filters) {
   const args = ['test', '--reporter=list,json', ...filters];
   const env = { PLAYWRIGHT_JSON_OUTPUT_FILE: report };
   const exitCode = await show(join(root, 'node_modules/.bin/playwright'), args, env);
-  const result = readReport(report);
-  if (result === null) return counted(NOTHING, 1);
-  const { expected, unexpected, flaky, skipped } = result.stats;
-  return counted({ passed: expected, failed: unexpected + flaky, skipped }, exitCode);
+  return countPlaywright(readReport(report), exitCode);
 }
 
 /** `npm test -- tests/shared` runs what lies below; without a filter everything runs. */
@@ -81,19 +59,21 @@ async function runAll(filters) {
   const others = filters.filter((filter) => !filter.includes('e2e'));
   const results = [];
   if (filters.length === 0 || others.length > 0) results.push(await runVitest(others));
+  if (interrupted) return [...results, ONE_FAILED];
   if (filters.length === 0 || forBrowser.length > 0) results.push(await runPlaywright(forBrowser));
   return results;
 }
 
 // Ctrl-C reaches the runner too; this script stays to count and to say the last line.
-process.on('SIGINT', () => undefined);
+let interrupted = false;
+for (const name of ['SIGINT', 'SIGTERM']) process.on(name, () => (interrupted = true));
 const results = await runAll(process.argv.slice(2)).catch((error) => {
   say(error.message);
-  return [counted(NOTHING, 1)];
+  return [ONE_FAILED];
 });
 if (process.env.CHECK_FAILED !== undefined) {
   say('\nnpm run check failed before the tests and counts as one failed.');
-  results.push(counted(NOTHING, 1));
+  results.push(ONE_FAILED);
 }
 const sum = (key) => results.reduce((total, result) => total + result[key], 0);
 if (sum('skipped') > 0) say(`\n${sum('skipped')} skipped`);

@@ -100,9 +100,11 @@ export function MorningRoundPage() {
         }
         detail={
           flagId === null ? (
-            <EmptyState icon={Users} title="No case is open.">
-              Choose one from the queue. Opening it tells the patient that you have read it.
-            </EmptyState>
+            flags?.length === 0 ? null : (
+              <EmptyState icon={Users} title="No case is open.">
+                Choose one from the queue. Opening it tells the patient that you have read it.
+              </EmptyState>
+            )
           ) : (
             <CasePane key={flagId} flagId={flagId} nowMs={nowMs} />
           )

@@ -89,9 +89,10 @@ test('a fall on the phone reaches the open round, and the reply reaches the phon
   await expect
     .poll(async () => (await therapist.request.get('/outbox')).text(), { timeout: 15_000 })
     .toContain('Espalier: a message is waiting');
-  const outbox = await (await therapist.request.get('/outbox')).text();
+  // The addresses that mail goes to are left out of the look: an address may hold its owner's name.
+  const outbox = (await (await therapist.request.get('/outbox')).text()).replaceAll(/<dd>[^<]*<\/dd>/g, '');
   expect(outbox).toContain('Espalier: a flag is waiting');
-  expect(outbox).not.toMatch(/Tobias|Ahlgren(?!.example)|fall|pain|sling|shoulder|noon/i);
+  expect(outbox).not.toMatch(/Tobias|Ahlgren|fall|pain|sling|shoulder|noon/i);
 
   expect(patientWatch.complaints).toEqual([]);
   expect(therapistWatch.complaints).toEqual([]);

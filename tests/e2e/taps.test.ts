@@ -59,7 +59,7 @@ test('the controls lie toward the free hand: right for a left shoulder, left for
     await signIn(page, product, name);
     await page.goto('/check-in');
     const edges = async (value: string) => {
-      const box = await page.getByRole('button', { name: value, exact: true }).boundingBox();
+      const box = await page.getByRole('button', { name: new RegExp(`^${value}(,|$)`) }).boundingBox();
       return { left: box?.x ?? NaN, right: (box?.x ?? NaN) + (box?.width ?? NaN) };
     };
     const side = corner === '3' ? 'right' : 'left';

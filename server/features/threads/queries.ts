@@ -1,5 +1,5 @@
 import { and, asc, desc, eq, exists, gt, inArray, or, sql, type SQL } from 'drizzle-orm';
-import { coversClinic } from '#shared/access/permissions.ts';
+import { coversClinic, isClinician } from '#shared/access/permissions.ts';
 import { Problem } from '#shared/problems/problems.ts';
 import type { PersonActor } from '../../db/actor.ts';
 import { careTeamMembers, operationCards, patients } from '../../db/schema/patients.ts';
@@ -9,10 +9,17 @@ import type { Tx } from '../../db/with-tx.ts';
 
 export type ThreadRow = typeof threads.$inferSelect;
 
+/** On which side of a thread somebody stands: its patient is one, also where they work for the clinic. */
+export const sideIn = (thread: Pick<ThreadRow, 'patientId'>, actor: PersonActor): 'patient' | 'clinic' =>
+  thread.patientId === actor.patientId ? 'patient' : 'clinic';
+
+const ownThreads = ({ patientId }: PersonActor): SQL =>
+  patientId ? eq(threads.patientId, patientId) : sql`false`;
+
 /** The threads an actor may see: a patient their own; a clinician those of their care teams, those they take part in, or all. */
 const visibleThreads = (tx: Tx, actor: PersonActor): SQL | undefined => {
   const inClinic = eq(threads.clinicId, actor.clinicId);
-  if (actor.patientId) return and(inClinic, eq(threads.patientId, actor.patientId));
+  if (!isClinician(actor.roles)) return and(inClinic, ownThreads(actor));
   if (coversClinic(actor.roles)) return inClinic;
   const onCareTeam = tx
     .select({ one: sql`1` })
@@ -34,7 +41,7 @@ const visibleThreads = (tx: Tx, actor: PersonActor): SQL | undefined => {
         eq(threadParticipants.personId, actor.personId),
       ),
     );
-  return and(inClinic, or(exists(onCareTeam), exists(takesPart)));
+  return and(inClinic, or(ownThreads(actor), exists(onCareTeam), exists(takesPart)));
 };
 
 /** The one door to a thread. What is not visible does not exist. */
@@ -60,7 +67,8 @@ export const lockThread = async (tx: Tx, thread: Pick<ThreadRow, 'clinicId' | 'i
   return locked;
 };
 
-const mySide = (actor: PersonActor): 'patient' | 'clinic' => (actor.patientId ? 'patient' : 'clinic');
+const mySide = (actor: PersonActor): SQL =>
+  sql`case when ${ownThreads(actor)} then 'patient' else 'clinic' end`;
 
 /**
  * Messages of the other side that this person has not seen. A clinician who has never opened the thread counts
@@ -128,11 +136,12 @@ export const summaryOf = async (tx: Tx, actor: PersonActor, threadId: string): P
   return row;
 };
 
+/** In a patient's own threads. */
 export const countUnseenMessages = async (tx: Tx, actor: PersonActor): Promise<number> => {
   const rows = await tx
     .select({ total: sql<number>`coalesce(sum(${unseenBy(actor)}), 0)::int` })
     .from(threads)
-    .where(visibleThreads(tx, actor));
+    .where(and(eq(threads.clinicId, actor.clinicId), ownThreads(actor)));
   return rows[0]?.total ?? 0;
 };
 

@@ -15,6 +15,7 @@ import {
   messageByClientId,
   messagesAfter,
   participantsOf,
+  sideIn,
   summariesVisibleTo,
   summaryOf,
   threadVisibleTo,
@@ -46,8 +47,6 @@ const toSummary = (row: SummaryRow, now: Date): ThreadSummary => ({
   unseen: row.unseen,
   flagId: row.flagId,
 });
-
-const sideOf = (actor: PersonActor): 'patient' | 'clinic' => (actor.patientId ? 'patient' : 'clinic');
 
 export const listThreadsFor = async (tx: Tx, actor: PersonActor, now: Date): Promise<ThreadSummary[]> => {
   const rows = await summariesVisibleTo(tx, actor);
@@ -95,7 +94,7 @@ const seeUpTo = async (tx: Tx, thread: ThreadRow, actor: PersonActor, sequence: 
       clinicId: thread.clinicId,
       threadId: thread.id,
       personId: actor.personId,
-      side: sideOf(actor),
+      side: sideIn(thread, actor),
       seenSequence: sequence,
       seenAt: now,
     })
@@ -103,6 +102,28 @@ const seeUpTo = async (tx: Tx, thread: ThreadRow, actor: PersonActor, sequence: 
       target: [threadParticipants.clinicId, threadParticipants.threadId, threadParticipants.personId],
       set: { seenSequence: sequence, seenAt: now },
       setWhere: sql`${threadParticipants.seenSequence} < ${sequence}`,
+    });
+};
+
+/**
+ * Writing makes somebody a participant. It counts as having seen the thread only where they had seen all of it
+ * before: what came while they wrote has not been on their screen.
+ */
+const takePart = async (tx: Tx, thread: ThreadRow, actor: PersonActor, upTo: number, now: Date) => {
+  const isFirst = thread.lastSequence === 0;
+  await tx
+    .insert(threadParticipants)
+    .values({
+      clinicId: thread.clinicId,
+      threadId: thread.id,
+      personId: actor.personId,
+      side: sideIn(thread, actor),
+      ...(isFirst ? { seenSequence: upTo, seenAt: now } : {}),
+    })
+    .onConflictDoUpdate({
+      target: [threadParticipants.clinicId, threadParticipants.threadId, threadParticipants.personId],
+      set: { seenSequence: upTo, seenAt: now },
+      setWhere: sql`${threadParticipants.seenSequence} >= ${thread.lastSequence}`,
     });
 };
 
@@ -175,22 +196,28 @@ const append = async (
     throw new Problem('id-conflict');
   }
   const sequence = thread.lastSequence + 1;
-  const side = sideOf(actor);
-  await tx.insert(messages).values({
-    ...author,
-    threadId: thread.id,
-    sequence,
-    kind: 'message',
-    authorSide: side,
-    text,
-    sentAt: now,
-  });
+  const side = sideIn(thread, actor);
+  const inserted = await tx
+    .insert(messages)
+    .values({
+      ...author,
+      threadId: thread.id,
+      sequence,
+      kind: 'message',
+      authorSide: side,
+      text,
+      sentAt: now,
+    })
+    .onConflictDoNothing({ target: [messages.clinicId, messages.authorId, messages.clientId] })
+    .returning({ id: messages.id });
+  // The same id was sent into another thread at the same moment.
+  if (inserted.length === 0) throw new Problem('id-conflict');
   const lastSequence = side === 'patient' ? await noteOutOfHours(tx, thread, sequence, now) : sequence;
   await tx
     .update(threads)
     .set({ lastSequence, lastAt: now, state: side === 'patient' ? 'waiting-on-us' : 'waiting-on-patient' })
     .where(and(eq(threads.clinicId, thread.clinicId), eq(threads.id, thread.id)));
-  await seeUpTo(tx, thread, actor, lastSequence, now);
+  await takePart(tx, thread, actor, lastSequence, now);
   const written = await messageByClientId(tx, author);
   if (!written) throw new Error('A message that was just written is not there.');
 
@@ -253,7 +280,7 @@ const insertThread = async (
       clinicId: actor.clinicId,
       authorId: actor.personId,
       ...values,
-      state: sideOf(actor) === 'patient' ? 'waiting-on-us' : 'waiting-on-patient',
+      state: sideIn(thread, actor) === 'patient' ? 'waiting-on-us' : 'waiting-on-patient',
       lastAt: now,
       createdAt: now,
     })
@@ -289,6 +316,11 @@ export const startThread = async (
   );
   const thread = made ?? (await ownThreadByClientId(tx, actor, input.id));
   if (thread.subject !== input.subject) throw new Problem('id-conflict');
+  if (!made) {
+    const author = { clinicId: actor.clinicId, authorId: actor.personId, clientId: input.message.id };
+    const first = await messageByClientId(tx, author);
+    if (first?.threadId !== thread.id) throw new Problem('id-conflict');
+  }
   await append(tx, actor, thread, input.message, now);
   return detailOf(tx, actor, thread.id, now);
 };

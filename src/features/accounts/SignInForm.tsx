@@ -1,4 +1,4 @@
-import { zodResolver } from '@hookform/resolvers/zod';
+import { schemaResolver } from '#src/lib/schema-resolver.ts';
 import { useForm } from 'react-hook-form';
 import { useTranslation } from 'react-i18next';
 import { signInBody } from '#shared/accounts/contract.ts';
@@ -18,7 +18,7 @@ export function SignInForm() {
   const signIn = useSignIn();
   const refusal = useRefusal(signIn.error);
   const { register, handleSubmit, setError, setFocus, formState } = useForm({
-    resolver: zodResolver(signInBody),
+    resolver: schemaResolver(signInBody),
     defaultValues: { email: '', password: '', staySignedIn: false },
   });
   const { errors } = formState;

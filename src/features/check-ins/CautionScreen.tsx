@@ -1,16 +1,16 @@
-import { HeartHandshake, Phone } from 'lucide-react';
+import { HeartHandshake } from 'lucide-react';
 import { useEffect, useRef } from 'react';
 import { useTranslation } from 'react-i18next';
 import type { ClinicCard } from '#shared/clinic/contract.ts';
 import type { Finding } from '#shared/red-flags/findings.ts';
 import { useHoldScreen } from '#src/app/caution-hold.ts';
 import { Button } from '#src/components/Button.tsx';
-import { LinkButton } from '#src/components/LinkButton.tsx';
 import { SignShape } from '#src/components/SignShape.tsx';
 import { classNames } from '#src/components/class-names.ts';
-import { telephoneHref } from '#src/lib/format.ts';
 import type { OutgoingAlert } from './alert-outbox.ts';
 import { AlertStatus } from './AlertStatus.tsx';
+import { CautionCalls, lookOf } from './CautionCalls.tsx';
+import type { CautionLook } from './CautionCalls.tsx';
 import { findingWords } from './finding-words.ts';
 
 type Props = {
@@ -23,18 +23,11 @@ type Props = {
   onGoOn: () => void;
 };
 
-type Look = 'emergency' | 'crisis' | 'urgent';
-
-const grounds: Record<Look, string> = {
+const grounds: Record<CautionLook, string> = {
   emergency: 'bg-clay-wash',
   crisis: 'bg-slate-wash',
   urgent: 'bg-ochre-wash',
 };
-
-function lookOf([first]: readonly Finding[]): Look {
-  if (first?.code === 'self-harm') return 'crisis';
-  return first?.urgency === 'emergency' ? 'emergency' : 'urgent';
-}
 
 /**
  * The whole screen, at once, from what is on the device: whom to call, what was told, what to do meanwhile, and
@@ -66,7 +59,7 @@ export function CautionScreen({ findings, clinic, alertId, entry, onMistake, onG
             {t('rules:caution.told')} <strong>{words.told}.</strong> {words.why.slice(0, 2).join(' ')}
           </p>
         </div>
-        <Calls look={look} findings={findings} clinic={clinic} />
+        <CautionCalls look={look} findings={findings} clinic={clinic} />
         <section className="grid gap-2 rounded bg-sheet px-4 py-3.5">
           <h2 className="text-lg">{t('rules:caution.while-you-wait')}</h2>
           {words.meanwhile.map((advice) => (
@@ -89,56 +82,6 @@ export function CautionScreen({ findings, clinic, alertId, entry, onMistake, onG
           </button>
         </div>
       </main>
-    </div>
-  );
-}
-
-type CallsProps = { look: Look; findings: readonly Finding[]; clinic: ClinicCard };
-
-function Calls({ look, findings, clinic }: CallsProps) {
-  const { t } = useTranslation(['check-in-screens', 'rules']);
-  const crisis = findings.some(({ code }) => code === 'self-harm');
-  const emergency = (
-    <LinkButton
-      href={telephoneHref(clinic.emergencyNumber)}
-      variant={look === 'emergency' ? 'danger' : 'danger-outline'}
-      size="large"
-      block
-      icon={Phone}
-    >
-      {t('rules:caution.call', { number: clinic.emergencyNumber })}
-    </LinkButton>
-  );
-  const crisisLine = crisis ? (
-    <LinkButton href={telephoneHref(clinic.crisisNumber)} size="large" block icon={Phone}>
-      {t('caution.crisis', { number: clinic.crisisNumber })}
-    </LinkButton>
-  ) : null;
-  const onCall = (
-    <LinkButton
-      href={telephoneHref(clinic.onCallNumber)}
-      variant={look === 'emergency' ? 'danger-outline' : look === 'urgent' ? 'primary' : 'outline'}
-      size="large"
-      block
-      icon={look === 'urgent' ? Phone : undefined}
-    >
-      {t('rules:caution.call-clinic')}
-    </LinkButton>
-  );
-  if (look === 'crisis') {
-    return (
-      <div className="grid gap-3">
-        {crisisLine}
-        {emergency}
-        {onCall}
-      </div>
-    );
-  }
-  return (
-    <div className="grid gap-3">
-      {look === 'emergency' ? emergency : onCall}
-      {look === 'emergency' ? crisisLine : null}
-      {look === 'emergency' ? onCall : emergency}
     </div>
   );
 }

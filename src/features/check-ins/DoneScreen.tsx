@@ -12,6 +12,7 @@ import type { SignShapeName } from '#src/components/SignShape.tsx';
 import { classNames } from '#src/components/class-names.ts';
 import { useNowMs } from '#src/lib/now.ts';
 import { formatMoment, telephoneHref } from '#src/lib/format.ts';
+import { CautionCalls, lookOf } from './CautionCalls.tsx';
 import { findingWords } from './finding-words.ts';
 
 type Props = {
@@ -38,14 +39,19 @@ export function DoneScreen({ receipt, findings, firstName, clinic }: Props) {
     heading.current?.focus();
   }, []);
   const highest = findings.filter(({ urgency }) => urgency === findings[0]?.urgency);
+  const emergency = findings[0]?.urgency === 'emergency';
   const others = findings.filter(({ urgency }) => urgency !== findings[0]?.urgency);
   return (
     <div className="base-large flex min-h-dvh flex-col">
       <main className="mx-auto grid w-full max-w-xl grow content-start gap-5 px-5 py-8">
-        <CircleCheck className="size-16 text-leaf" strokeWidth={1.5} aria-hidden />
+        {emergency ? (
+          <SignShape shape="octagon" size="large" />
+        ) : (
+          <CircleCheck className="size-16 text-leaf" strokeWidth={1.5} aria-hidden />
+        )}
         <div className="grid gap-1">
           <h1 ref={heading} tabIndex={-1} className="text-2xl leading-tight">
-            {t('done.title', { name: firstName })}
+            {emergency ? findingWords(t, highest, clinic).title : t('done.title', { name: firstName })}
           </h1>
           <p>
             {t('done.sent', { time: formatMoment(receipt.receivedAt, nowMs) })}{' '}
@@ -92,7 +98,11 @@ function Advice({ findings, others, clinic }: AdviceProps) {
       {words.meanwhile.map((advice) => (
         <p key={advice}>{advice}</p>
       ))}
-      <p>{words.next[0]}</p>
+      {/* In an emergency, or close to one, the next thing is a call. */}
+      {first.urgency === 'emergency' || first.urgency === 'urgent' ? (
+        <CautionCalls look={lookOf(findings)} findings={findings} clinic={clinic} />
+      ) : null}
+      {first.urgency === 'emergency' ? null : <p>{words.next[0]}</p>}
       {others.length > 0 ? <p>{t('done.alsoSeen', { told: findingWords(t, others, clinic).told })}</p> : null}
     </section>
   );

@@ -22,8 +22,8 @@ function CallLine({ clinic: { onCallNumber } }: Props) {
 
 /** "1 check-in is waiting", or what is known when none is. */
 function waitingWords(unevaluated: number, lastBeatAt: string | null, timeZone: string): string {
-  if (unevaluated === 1) return '1 check-in has not been looked at by the rules yet.';
-  if (unevaluated > 1) return `${unevaluated} check-ins have not been looked at by the rules yet.`;
+  if (unevaluated === 1) return '1 check-in waits for the rules.';
+  if (unevaluated > 1) return `${unevaluated} check-ins wait for the rules.`;
   if (lastBeatAt === null) return 'The program that looks at them has not started.';
   return `The program that looks at them was last heard of at ${formatTime(lastBeatAt, timeZone)}.`;
 }
@@ -37,18 +37,18 @@ export function WorkerBanner({ clinic }: Props) {
   const isLate = data !== undefined && (data.late || data.unevaluated > 0);
   return (
     // The live region stands empty until then, or what arrives in it is not announced.
-    <div role="alert" className="max-lg:sticky max-lg:top-0 max-lg:z-20 print:hidden">
+    <div
+      role="alert"
+      className="z-20 max-lg:[@media(min-height:34em)]:sticky max-lg:[@media(min-height:34em)]:top-0 print:hidden"
+    >
       {error ? (
         <Banner tone="danger" title="The server cannot be reached. What you see may be old.">
           Check the connection; this screen tries again by itself. <CallLine clinic={clinic} />
         </Banner>
       ) : isLate ? (
-        <Banner
-          tone="danger"
-          title="Check-ins may be shown late. An empty queue does not mean that all is well."
-        >
-          {waitingWords(data.unevaluated, data.lastBeatAt, clinic.timeZone)} Tell whoever looks after
-          Espalier, and telephone the people you are worried about. <CallLine clinic={clinic} />
+        <Banner tone="danger" title="Check-ins may be shown late.">
+          {waitingWords(data.unevaluated, data.lastBeatAt, clinic.timeZone)} An empty queue does not mean that
+          all is well. Tell whoever looks after Espalier. <CallLine clinic={clinic} />
         </Banner>
       ) : null}
     </div>

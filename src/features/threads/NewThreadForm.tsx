@@ -1,4 +1,4 @@
-import { zodResolver } from '@hookform/resolvers/zod';
+import { schemaResolver } from '#src/lib/schema-resolver.ts';
 import { useState } from 'react';
 import { useForm } from 'react-hook-form';
 import type { FieldError } from 'react-hook-form';
@@ -45,7 +45,7 @@ export function NewThreadForm() {
     message: text.draft,
   });
   const { register, handleSubmit, setError, formState } = useForm<Body>({
-    resolver: zodResolver(postThreadBody),
+    resolver: schemaResolver(postThreadBody),
     defaultValues: defaults,
   });
   const { errors } = formState;

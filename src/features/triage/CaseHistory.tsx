@@ -19,11 +19,13 @@ export function CaseHistory({ flag, timeZone, nowMs }: Props) {
         </SectionHeading>
         <ol className="text-[0.9375rem] leading-snug">
           {flag.events.map((event) => (
-            <li key={event.id} className="grid grid-cols-[6.5rem_minmax(0,1fr)] gap-x-3 py-1">
-              <time dateTime={event.at} className="text-ink-soft">
+            <li key={event.id} className="flex flex-wrap gap-x-3 py-1">
+              <time dateTime={event.at} className="w-26 text-ink-soft">
                 {formatMoment(event.at, nowMs, timeZone)}
               </time>
-              <span>{[eventSentence(event), eventDetail(event)].filter(Boolean).join(': ')}</span>
+              <span className="min-w-0 grow basis-48">
+                {[eventSentence(event), eventDetail(event)].filter(Boolean).join(': ')}
+              </span>
             </li>
           ))}
         </ol>

@@ -1,4 +1,4 @@
-import { zodResolver } from '@hookform/resolvers/zod';
+import { schemaResolver } from '#src/lib/schema-resolver.ts';
 import type { ReactNode } from 'react';
 import { Controller, useForm, useWatch } from 'react-hook-form';
 import type { z } from 'zod';
@@ -45,7 +45,7 @@ export function CloseFlagDialog({ flag, onOpenChange, onClosed, notice }: Props)
   const close = useCloseFlag(flag.id);
   const { control, register, handleSubmit, setError, formState } = useForm<Values, unknown, Body>({
     shouldFocusError: false,
-    resolver: zodResolver(closeFlagBody),
+    resolver: schemaResolver(closeFlagBody),
     defaultValues: { note: '' },
   });
   useBusyWhile(formState.isDirty);

@@ -26,9 +26,11 @@ export function QueueFoot({ onShowKeys }: { onShowKeys: () => void }) {
       ) : (
         <span>Single keys are switched off.</span>
       )}
-      <Button variant="quiet" icon={Keyboard} onClick={onShowKeys}>
-        All keys
-      </Button>
+      <div className="-ml-4">
+        <Button variant="quiet" icon={Keyboard} onClick={onShowKeys}>
+          All keys
+        </Button>
+      </div>
     </div>
   );
 }

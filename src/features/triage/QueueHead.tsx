@@ -20,8 +20,14 @@ export function QueueHead({ round, headingRef, latest, caseOpen }: Props) {
     <div className="px-5 @4xl/clinic:pt-5">
       <div className={classNames('@max-4xl/clinic:pt-4', caseOpen && '@max-4xl/clinic:sr-only')}>
         <h1 ref={headingRef} tabIndex={-1} className="text-2xl leading-tight">
-          <span className="sr-only">Morning round, </span>
-          {round ? roundDate(round.date) : 'today'}
+          {round ? (
+            <>
+              <span className="sr-only">Morning round, </span>
+              {roundDate(round.date)}
+            </>
+          ) : (
+            'Morning round'
+          )}
         </h1>
         {round ? (
           <p className="mt-1 text-ink-soft">

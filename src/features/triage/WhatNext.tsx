@@ -46,8 +46,12 @@ export function WhatNext(props: Props) {
       <SectionHeading id="case-next" level={3} wire>
         What next
       </SectionHeading>
-      <p className="mb-3 text-[0.9375rem] text-ink-soft">{holderWords(flag, isMine, since)}</p>
-      <div className="grid gap-3">
+      <p className="text-[0.9375rem] text-ink-soft">{holderWords(flag, isMine, since)}</p>
+      {/* The live region stands empty until then, or what arrives in it is not announced. */}
+      <p role="status" className="text-[0.9375rem] font-bold text-leaf">
+        {sent ? `Sent. ${firstName} has been told.` : null}
+      </p>
+      <div className="mt-3 grid gap-3">
         {replyOpen ? (
           <ReplyForm
             flag={flag}
@@ -72,10 +76,6 @@ export function WhatNext(props: Props) {
             {reply.draft.text === '' ? `Reply to ${firstName}` : `Go on with the reply to ${firstName}`}
           </Button>
         )}
-        {/* The live region stands empty until then, or what arrives in it is not announced. */}
-        <p role="status" className="text-sm font-bold text-leaf empty:-mt-3">
-          {sent ? `Sent. ${firstName} has been told.` : null}
-        </p>
         {flag.threadId === null ? null : (
           <LinkButton block variant="outline" icon={MessagesSquare} to={`/clinic/messages/${flag.threadId}`}>
             Open the thread

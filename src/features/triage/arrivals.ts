@@ -4,7 +4,7 @@ import type { FlagRow } from '#shared/triage/contract.ts';
 type Known = ReadonlyMap<string, FlagRow['urgency']>;
 
 /** Flags that were not there before, and those that have been raised to another urgency since. */
-export const arrivedSince = (known: Known, flags: readonly FlagRow[]): FlagRow[] =>
+const arrivedSince = (known: Known, flags: readonly FlagRow[]): FlagRow[] =>
   flags.filter((flag) => known.get(flag.id) !== flag.urgency);
 
 type Arrivals = {

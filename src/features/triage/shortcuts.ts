@@ -2,9 +2,9 @@ import { useEffect, useEffectEvent } from 'react';
 import { useShortcutsOn } from './shortcut-setting.ts';
 
 /** The keys of the morning round. Enter opens what has the focus, by the browser's own hand. */
-export const shortcutKeys = ['j', 'k', 'c', 'r', 'x', '?'] as const;
-export type ShortcutKey = (typeof shortcutKeys)[number];
-export type Shortcuts = Partial<Record<ShortcutKey, () => void>>;
+const shortcutKeys = ['j', 'k', 'c', 'r', 'x', '?'] as const;
+type ShortcutKey = (typeof shortcutKeys)[number];
+type Shortcuts = Partial<Record<ShortcutKey, () => void>>;
 
 const typingPlaces = 'input, textarea, select, [contenteditable], [role="textbox"], [role="combobox"]';
 const layers = '[role="dialog"], [role="alertdialog"], [role="menu"]';

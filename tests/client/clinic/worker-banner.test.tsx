@@ -20,7 +20,7 @@ describe('the banner over every clinic screen', () => {
 
   it('says so as well when check-ins wait though the worker lives', async () => {
     await showBanner(() => ({ ...health, unevaluated: 2 }));
-    expect(await screen.findByText(/2 check-ins have not been looked at/)).toBeTruthy();
+    expect(await screen.findByText(/2 check-ins wait for the rules/)).toBeTruthy();
   });
 
   it('says that the screen may be old when the server does not answer', async () => {

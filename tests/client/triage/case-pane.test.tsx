@@ -1,6 +1,6 @@
 import { act, screen, waitFor } from '@testing-library/react';
 import { userEvent } from '@testing-library/user-event';
-import { beforeEach, describe, expect, it } from 'vitest';
+import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { Problem } from '#shared/problems/problems.ts';
 import type { FlagCase } from '#shared/triage/contract.ts';
 import { CasePane } from '#src/features/triage/CasePane.tsx';
@@ -14,6 +14,12 @@ const heldBy = (person: typeof noor): Partial<FlagCase> => ({
   claimedBy: person,
   claimedAt: '2026-12-01T12:02:00.000Z',
 });
+
+/** Without the waiting between two keys that a person needs. */
+const user = userEvent.setup({ delay: null });
+
+// The form is a chunk of its own; how long it takes to arrive is not what is tested here.
+beforeAll(() => import('#src/features/triage/CloseFlagDialog.tsx'));
 
 let current: FlagCase;
 beforeEach(() => {
@@ -58,7 +64,7 @@ describe('an open case', () => {
       },
     });
     await show();
-    await userEvent.click(await screen.findByRole('button', { name: 'Claim' }));
+    await user.click(await screen.findByRole('button', { name: 'Claim' }));
     expect((await screen.findByRole('alert')).textContent).toContain('Callum Reyes has claimed this flag.');
     expect(screen.queryByRole('button', { name: 'Claim' })).toBeNull();
     expect(screen.queryByRole('button', { name: 'Close with an outcome' })).toBeNull();
@@ -74,13 +80,14 @@ describe('an open case', () => {
     ];
     const sent = serveCase({ [`POST ${casePath}/replies`]: () => answers.shift()?.() });
     await show();
-    await userEvent.click(await screen.findByRole('button', { name: 'Reply to Tobias' }));
+    await user.click(await screen.findByRole('button', { name: 'Reply to Tobias' }));
     const box = screen.getByRole<HTMLTextAreaElement>('textbox', { name: 'Reply to Tobias' });
-    await userEvent.type(box, 'Keep the sling on.');
-    await userEvent.click(screen.getByRole('button', { name: 'Send' }));
+    await user.click(box);
+    await user.paste('Keep the sling on.');
+    await user.click(screen.getByRole('button', { name: 'Send' }));
     expect((await screen.findByRole('alert')).textContent).toContain('Your text is kept here.');
     expect(box.value).toBe('Keep the sling on.');
-    await userEvent.click(screen.getByRole('button', { name: 'Send' }));
+    await user.click(screen.getByRole('button', { name: 'Send' }));
     await waitFor(() => expect(screen.queryByRole('textbox')).toBeNull());
     const [first, second] = sent.filter(({ path }) => path.endsWith('/replies'));
     expect(second?.body).toEqual(first?.body);
@@ -89,8 +96,9 @@ describe('an open case', () => {
   it('says that a colleague has closed it meanwhile, and keeps the reply that was being written', async () => {
     serveCase();
     const { queryClient } = await show();
-    await userEvent.click(await screen.findByRole('button', { name: 'Reply to Tobias' }));
-    await userEvent.type(screen.getByRole('textbox'), 'Please call');
+    await user.click(await screen.findByRole('button', { name: 'Reply to Tobias' }));
+    await user.click(screen.getByRole('textbox'));
+    await user.paste('Please call');
     current = aCase({
       state: 'closed',
       outcome: 'advised-by-phone',
@@ -114,12 +122,12 @@ describe('closing a flag', () => {
   async function openForm(more: Parameters<typeof serve>[0] = {}) {
     const sent = serveCase(more);
     await show();
-    await userEvent.click(await screen.findByRole('button', { name: 'Close with an outcome' }));
+    await user.click(await screen.findByRole('button', { name: 'Close with an outcome' }));
     await screen.findByRole('dialog');
     return sent;
   }
-  const choose = (name: string) => userEvent.click(screen.getByRole('radio', { name }));
-  const submit = () => userEvent.click(screen.getByRole('button', { name: 'Close the flag' }));
+  const choose = (name: string) => user.click(screen.getByRole('radio', { name }));
+  const submit = () => user.click(screen.getByRole('button', { name: 'Close the flag' }));
 
   it('asks for an outcome, and for the words that some outcomes need, and sends nothing before', async () => {
     const sent = await openForm();
