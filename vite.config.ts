@@ -45,6 +45,7 @@ export default defineConfig({
         codeSplitting: {
           groups: [
             {
+              debugName: 'first',
               // One file instead of fifty small ones: fewer requests on a poor line, and it compresses better.
               name: (id, graph) =>
                 !firstScreen.includes(id) && !notFirst.test(id) && reachedFrom(firstScreen, graph).has(id)

@@ -61,8 +61,6 @@ export async function run(url, sequence) {
     if (process.env.npm_lifecycle_event !== undefined && process.ppid !== startedBy && askedAt === null)
       onSignal();
   }, LOOK_FOR_NPM_EVERY_MS);
-  // Whoever read the output may be gone; the run goes on.
-  process.stdout.on('error', () => undefined);
 
   const add = (part) => {
     parts.push(part);
@@ -92,6 +90,6 @@ export async function run(url, sequence) {
   }
   clearInterval(lookForNpm);
   forgetRun();
-  say('Espalier has ended.');
+  if (parts.length > 0) say('Espalier has ended.');
   return failure === null ? 0 : 1;
 }

@@ -7,6 +7,8 @@ export function say(line) {
 
 /** Runs an entry script: a Stop ends it with its sentence, anything else with its stack, both with code 1. */
 export async function main(run) {
+  // Whoever read the output may be gone, as after `| head`; the work goes on to its end.
+  for (const stream of [process.stdout, process.stderr]) stream.on('error', () => undefined);
   try {
     await run();
   } catch (error) {

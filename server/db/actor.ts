@@ -1,8 +1,6 @@
 import type { Role } from '#shared/access/permissions.ts';
 
-/** Who acts. Every transaction knows it, and row security reads its clinic. */
-export type Actor = PersonActor | LinkActor | SystemActor | AnonymousActor;
-
+/** A person with the roles they hold now. */
 export type PersonActor = {
   kind: 'person';
   clinicId: string;
@@ -13,13 +11,16 @@ export type PersonActor = {
 };
 
 /** Someone who holds a one-time link and no account. */
-export type LinkActor = { kind: 'link'; clinicId: string; linkId: string };
+type LinkActor = { kind: 'link'; clinicId: string; linkId: string };
 
 /** The system acting for one clinic: jobs, sweeps, timed work. */
 export type SystemActor = { kind: 'system'; clinicId: string };
 
 /** Nobody known: sees no clinic's rows. */
-export type AnonymousActor = { kind: 'anonymous' };
+type AnonymousActor = { kind: 'anonymous' };
 
-/** An actor before its person's roles are read from the clinic's own rows. */
+/**
+ * Who a transaction acts as. Every transaction knows it, and row security reads its clinic. A person's roles are
+ * read inside, from the clinic's own rows.
+ */
 export type ActingAs = Omit<PersonActor, 'roles' | 'patientId'> | LinkActor | SystemActor | AnonymousActor;

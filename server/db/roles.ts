@@ -3,7 +3,7 @@ import type pg from 'pg';
 /** Logs in, owns nothing, cannot pass row security. */
 export const appRole = 'espalier_app';
 /** Logs in; rights to the tables outside the fence only. */
-export const gateRole = 'espalier_gate';
+const gateRole = 'espalier_gate';
 /** Cannot log in; owns the functions that look across clinics. */
 const finderRole = 'espalier_finder';
 

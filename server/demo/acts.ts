@@ -11,8 +11,13 @@ import { clinicTables } from './tables.ts';
 /** Any number that nothing else locks; two acts at once wait for each other. */
 const demoLock = 4_600_002;
 
+/** Whether it is there. Its row stays locked, so that writes of a running product wait and find it gone or whole. */
 const isThere = async (tx: Tx): Promise<boolean> => {
-  const rows = await tx.select({ isDemo: clinics.isDemo }).from(clinics).where(eq(clinics.id, demoClinicId));
+  const rows = await tx
+    .select({ isDemo: clinics.isDemo })
+    .from(clinics)
+    .where(eq(clinics.id, demoClinicId))
+    .for('update');
   const clinic = rows[0];
   if (clinic && !clinic.isDemo) throw new Error('The clinic with the id of the demo clinic is not a demo.');
   return clinic !== undefined;
@@ -39,7 +44,7 @@ const empty = async (tx: Tx): Promise<void> => {
  * What can be done to the demo clinic, each in one transaction of the database's owner: done or not done. Row
  * security holds the owner to this clinic, and every statement names it besides.
  */
-export const demoActs = {
+const demoActs = {
   /** Fills it where it is not there yet. */
   fill: async (tx: Tx, now: Date): Promise<void> => {
     if (!(await isThere(tx))) await fillDemo(tx, now);

@@ -1,4 +1,4 @@
-import { and, eq, getTableColumns, isNotNull, max, or, sql, type SQL } from 'drizzle-orm';
+import { and, eq, getTableColumns, isNotNull, like, max, or, sql, type SQL } from 'drizzle-orm';
 import type { PgColumn } from 'drizzle-orm/pg-core';
 import { daysBetween, localDateIn } from '#shared/plans/calendar.ts';
 import { alertMistakes, alerts, checkIns } from '../db/schema/check-ins.ts';
@@ -6,11 +6,12 @@ import { flags } from '../db/schema/flags.ts';
 import { patients } from '../db/schema/patients.ts';
 import { messages, threads } from '../db/schema/threads.ts';
 import type { Tx } from '../db/with-tx.ts';
-import { demoClinic, demoClinicId, demoTimeZone } from './clinic.ts';
+import { clinicOf } from '../features/clinic/queries.ts';
+import { demoClinicId, demoTimeZone } from './clinic.ts';
 import { flagSubject } from './flag-threads.ts';
 import { instantAt } from './moments.ts';
 import { clinicTables, type ClinicTable } from './tables.ts';
-import { closedClinicNote } from './threads.ts';
+import { closedClinicNote, closedClinicWords } from './threads.ts';
 
 /** A birth date is the person's own; every other date and instant of the demo moves. */
 const staying: readonly PgColumn[] = [patients.birthDate];
@@ -25,7 +26,7 @@ const ofDeviceClocks: readonly PgColumn[] = [
 type MovingColumn = { key: string; column: PgColumn; kind: 'instant' | 'date' };
 
 /** The dates and instants of a table, by the names that Drizzle knows them by. */
-export const movingColumns = (table: ClinicTable): MovingColumn[] =>
+const movingColumns = (table: ClinicTable): MovingColumn[] =>
   Object.entries(getTableColumns(table)).flatMap(([key, column]): MovingColumn[] => {
     if (staying.includes(column)) return [];
     if (column.getSQLType() === 'timestamp with time zone') return [{ key, column, kind: 'instant' }];
@@ -99,14 +100,15 @@ const rewordDays = async (tx: Tx): Promise<void> => {
       .set({ subject: flagSubject(raisedAt) })
       .where(and(ofDemo(threads), eq(threads.id, id)));
   }
+  const clinic = await clinicOf(tx, demoClinicId);
   const notes = await tx
     .select({ id: messages.id, sentAt: messages.sentAt })
     .from(messages)
-    .where(and(ofDemo(messages), eq(messages.kind, 'note')));
+    .where(and(ofDemo(messages), eq(messages.kind, 'note'), like(messages.text, `${closedClinicWords}%`)));
   for (const { id, sentAt } of notes) {
     await tx
       .update(messages)
-      .set({ text: closedClinicNote(demoClinic, sentAt) })
+      .set({ text: closedClinicNote(clinic, sentAt) })
       .where(and(ofDemo(messages), eq(messages.id, id)));
   }
 };

@@ -3,7 +3,7 @@ import type { Answers } from '#shared/check-ins/answers.ts';
 import type { Random } from './random.ts';
 
 /** What decides which questions a day's check-in asks, and what an ordinary answer to them is. */
-export type DayOfAnswers = {
+type DayOfAnswers = {
   day: number;
   block: 'none' | 'single' | 'long-acting';
   precautionsInForce: readonly string[];

@@ -13,7 +13,7 @@ import type { DemoThread } from './threads.ts';
 
 type EventRow = typeof flagEvents.$inferSelect;
 
-export type DemoFlag = {
+type DemoFlag = {
   flag: FlagRecord;
   findings: (typeof findings.$inferSelect)[];
   events: EventRow[];

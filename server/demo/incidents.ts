@@ -11,7 +11,7 @@ export type Resolution = {
 };
 
 /** Something that went otherwise than usual on one day, and how the clinic has dealt with it. */
-export type Incident = {
+type Incident = {
   /** The days after surgery between which it can happen. */
   fromDay: number;
   untilDay: number;
@@ -46,7 +46,7 @@ const raised = (usual: { painNow: number }, by: number): Answers => {
 };
 
 /** From the most ordinary to the rarest; the first ones are drawn more often. */
-export const incidents: readonly [Incident, ...Incident[]] = [
+const incidents: readonly [Incident, ...Incident[]] = [
   {
     fromDay: 1,
     untilDay: 120,

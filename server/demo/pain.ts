@@ -1,7 +1,7 @@
 import type { Random } from './random.ts';
 
 /** A person's pain before surgery and at the peak after it; the rest of the curve follows from the two. */
-export type PainCourse = { before: number; peak: number };
+type PainCourse = { before: number; peak: number };
 
 export const drawCourse = (random: Random): PainCourse => ({
   before: Math.min(8.5, Math.max(3.5, 5.8 + random.normal())),

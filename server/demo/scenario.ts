@@ -42,7 +42,7 @@ export type Script = {
 export const onDuty = (lead: StaffKey, date: LocalDate): StaffKey => (isWorkingDay(date) ? lead : 'dov');
 
 /** The morning on which Ines found her dressing damp. */
-export const dampDressingDate = (today: LocalDate): LocalDate => workingDayBefore(today, 4);
+const dampDressingDate = (today: LocalDate): LocalDate => workingDayBefore(today, 4);
 
 const dampDressing: Resolution = {
   outcome: 'visit-brought-forward',

@@ -4,7 +4,7 @@ import { idOf } from './random.ts';
 export type StaffKey = 'noor' | 'callum' | 'petra' | 'dov' | 'joss' | 'mirela' | 'teo';
 
 /** Somebody with an account who is not a patient. */
-export type StaffMember = {
+type StaffMember = {
   key: StaffKey;
   name: string;
   credential: string | null;

@@ -31,6 +31,9 @@ export type Conversation = {
 
 const noteEveryMs = 12 * 60 * 60 * 1000;
 
+/** How every note of a closed clinic begins. */
+export const closedClinicWords = 'The clinic is closed and opens ';
+
 /** What a thread says by itself when somebody writes to the closed clinic; the words are the product's own. */
 export const closedClinicNote = (
   { openingHours, timeZone, ...clinic }: typeof demoClinic,
@@ -47,7 +50,7 @@ export const closedClinicNote = (
       }).format(opensAt)
     : 'the next working day';
   return (
-    `The clinic is closed and opens ${opens}. This thread is not watched until then. ` +
+    `${closedClinicWords}${opens}. This thread is not watched until then. ` +
     `If it cannot wait, call ${clinic.onCallNumber}; in an emergency call ${clinic.emergencyNumber}.`
   );
 };

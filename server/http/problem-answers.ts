@@ -2,6 +2,7 @@ import { randomUUID } from 'node:crypto';
 import type { ErrorRequestHandler, RequestHandler } from 'express';
 import type { Logger } from 'pino';
 import { Problem, problems } from '#shared/problems/problems.ts';
+import { framesOf } from '../log.ts';
 
 /** What Express and its body parser throw at a request that is not right: an error with a 4xx status. */
 const fromRequest = (error: unknown): Problem | null => {
@@ -67,10 +68,7 @@ const faultOf = (error: unknown): Record<string, unknown> => {
   const cause = error.cause instanceof Error ? error.cause : null;
   return {
     name: error.name,
-    stack: error.stack
-      ?.split('\n')
-      .filter((line) => line.trimStart().startsWith('at '))
-      .slice(0, 12),
+    stack: framesOf(error),
     code: cause && 'code' in cause ? cause.code : undefined,
     constraint: cause && 'constraint' in cause ? cause.constraint : undefined,
     cause: cause?.name,

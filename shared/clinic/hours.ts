@@ -1,14 +1,10 @@
 import { TZDate } from '@date-fns/tz';
-import { z } from 'zod';
 
-const timeOfDay = z.string().regex(/^([01]\d|2[0-3]):[0-5]\d$/, 'Give a time as 08:00.');
-
-/** Opening hours by weekday, 0 = Sunday, in the clinic's own time zone; no entry means closed. */
-export const openingHours = z.array(
-  z.object({ weekday: z.number().int().min(0).max(6), opens: timeOfDay, closes: timeOfDay }),
-);
-
-export type OpeningHours = z.output<typeof openingHours>;
+/**
+ * Opening hours by weekday, 0 = Sunday, in the clinic's own time zone, times as 08:00. A day without an entry is
+ * closed; one with several is closed in between.
+ */
+export type OpeningHours = { weekday: number; opens: string; closes: string }[];
 
 const minutesOf = (time: string): number => Number(time.slice(0, 2)) * 60 + Number(time.slice(3, 5));
 

@@ -2,7 +2,10 @@ export const flagStates = ['open', 'claimed', 'closed'] as const;
 export type FlagState = (typeof flagStates)[number];
 export type FlagMove = 'claim' | 'release' | 'close';
 
-/** Nothing closes by itself, and a closed flag stays closed: a later finding is a flag of its own. */
+/**
+ * What people can do with a flag. Nothing closes by itself. Only the system opens a closed flag again, when the
+ * check-in that it came from is finished after all and brings a finding that nobody has seen (`raiseFlag`).
+ */
 const MOVES = {
   open: { claim: 'claimed', close: 'closed' },
   claimed: { release: 'open', close: 'closed' },

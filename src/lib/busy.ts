@@ -5,7 +5,7 @@ let busyCount = 0;
 const changed = createSignal<void>();
 
 /** Marks this tab as being in the middle of something until the returned function is called. */
-export function beginBusy(): () => void {
+function beginBusy(): () => void {
   busyCount += 1;
   changed.emit();
   let over = false;

@@ -49,7 +49,7 @@ function Head({ plan }: { plan: MyPlan }) {
     <>
       {t('head', {
         arm: t(`arm.${plan.arm}`),
-        procedure: procedure.charAt(0).toLocaleLowerCase() + procedure.slice(1),
+        procedure: t(`procedures.${procedure}`, { defaultValue: procedure }),
         date: formatDate(plan.surgeryDate),
       })}{' '}
       {therapist ? t('setBy', { therapist, surgeon }) : t('setBySurgeon', { surgeon })}

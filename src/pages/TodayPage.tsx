@@ -88,7 +88,7 @@ function Loaded({ today, nowMs }: { today: Today; nowMs: number }) {
           {t('holdOff.title')}
         </SectionHeading>
         {today.holdOff.length > 0 ? (
-          <HoldOffList items={today.holdOff} therapist={today.therapist} />
+          <HoldOffList items={today.holdOff} therapist={today.therapist} atFirst={6} />
         ) : (
           <p className="py-2">{t('holdOff.none')}</p>
         )}

@@ -9,6 +9,8 @@ import { root } from '../../scripts/places.mjs';
 export type RealProcess = {
   /** Every line it has written, to either stream. */
   lines: string[];
+  /** The first line that contains the text; fails with all that was said when the process ends without it. */
+  says: (text: string) => Promise<string>;
   /** Ends it as a power cut would, and waits until it is gone. */
   kill9: () => Promise<void>;
   /** Ends it as the start script does; gives the exit code. */
@@ -24,43 +26,47 @@ export const startProcess = (entry: string, env: Record<string, string>): RealPr
     stdio: ['ignore', 'pipe', 'pipe'],
   });
   const lines: string[] = [];
+  const listeners = new Set<() => void>();
+  const tell = () => listeners.forEach((listen) => listen());
   for (const stream of [child.stdout, child.stderr]) {
-    createInterface({ input: stream }).on('line', (line) => lines.push(line));
+    createInterface({ input: stream }).on('line', (line) => {
+      lines.push(line);
+      tell();
+    });
   }
+  let ended = false;
   const exited = new Promise<number | null>((resolve, reject) => {
     child.once('error', reject);
-    child.once('close', resolve);
+    child.once('close', (code) => {
+      ended = true;
+      resolve(code);
+      tell();
+    });
   });
-  const end = async (signal: 'SIGKILL' | 'SIGTERM') => {
+  const end = (signal: 'SIGKILL' | 'SIGTERM') => {
     child.kill(signal);
     return exited;
   };
   return {
     lines,
     exited,
+    says: (text) =>
+      new Promise((resolve, reject) => {
+        const listen = () => {
+          const line = lines.find((one) => one.includes(text));
+          if (line === undefined && !ended) return;
+          listeners.delete(listen);
+          if (line === undefined) reject(new Error(`Never said "${text}":\n${lines.join('\n')}`));
+          else resolve(line);
+        };
+        listeners.add(listen);
+        listen();
+      }),
     stop: () => end('SIGTERM'),
     kill9: async () => {
       await end('SIGKILL');
     },
   };
-};
-
-const readyWithinMs = 60_000;
-
-/** The first log line with this message; fails with all that was said when the process ends before it. */
-export const said = async (one: RealProcess, message: string): Promise<Record<string, unknown>> => {
-  let ended = false;
-  void one.exited.then(() => {
-    ended = true;
-  });
-  const until = Date.now() + readyWithinMs;
-  while (Date.now() < until) {
-    const line = one.lines.find((text) => text.includes(`"msg":"${message}"`));
-    if (line) return JSON.parse(line) as Record<string, unknown>;
-    if (ended) break;
-    await new Promise((resolve) => setTimeout(resolve, 20));
-  }
-  throw new Error(`Never said "${message}":\n${one.lines.join('\n')}`);
 };
 
 const databaseUrls = ({ urls }: TestDatabase) => ({
@@ -77,8 +83,8 @@ export const startWebProcess = async (database: TestDatabase): Promise<RealProce
     SESSION_SECRET: 'test-session-secret-of-32-characters',
     LOG_LEVEL: 'debug',
   });
-  const { address } = await said(web, 'web ready');
-  return { ...web, url: `http://127.0.0.1:${(address as { port: number }).port}` };
+  const { address } = JSON.parse(await web.says('"msg":"web ready"')) as { address: { port: number } };
+  return { ...web, url: `http://127.0.0.1:${address.port}` };
 };
 
 export const startWorkerProcess = async (database: TestDatabase, smtpUrl: string): Promise<RealProcess> => {
@@ -88,7 +94,7 @@ export const startWorkerProcess = async (database: TestDatabase, smtpUrl: string
     PUBLIC_URL: publicUrl,
     LOG_LEVEL: 'debug',
   });
-  await said(worker, 'worker ready');
+  await worker.says('"msg":"worker ready"');
   return worker;
 };
 

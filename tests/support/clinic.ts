@@ -16,7 +16,7 @@ export const testPassword = 'a long test passphrase';
 let testHash: Promise<string> | undefined;
 
 /** Every weekday around the clock, so that a test is in hours unless it says otherwise. */
-export const alwaysOpen: OpeningHours = [0, 1, 2, 3, 4, 5, 6].map((weekday) => ({
+const alwaysOpen: OpeningHours = [0, 1, 2, 3, 4, 5, 6].map((weekday) => ({
   weekday,
   opens: '00:00',
   closes: '23:59',

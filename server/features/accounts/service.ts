@@ -12,7 +12,7 @@ import { verifyPassword } from './passwords.ts';
 import { personOf } from './queries.ts';
 import { admitTry, forgetTries } from './throttle.ts';
 
-export const normaliseEmail = (email: string): string => email.trim().normalize('NFC').toLowerCase();
+const normaliseEmail = (email: string): string => email.trim().normalize('NFC').toLowerCase();
 
 /** Who an e-mail and a password belong to; null where they do not match, known account or not. */
 export const checkPassword = async (

@@ -183,7 +183,7 @@ const selectMessages = (tx: Tx) =>
 
 export type MessageRow = Awaited<ReturnType<typeof selectMessages>>[number];
 
-export const messagePageSize = 200;
+const messagePageSize = 200;
 
 export const messagesAfter = (tx: Tx, thread: ThreadRow, after: number): Promise<MessageRow[]> =>
   selectMessages(tx)

@@ -8,15 +8,8 @@ import {
   postThread,
 } from '#shared/threads/contract.ts';
 import { route } from '../../http/route.ts';
-import {
-  addMessage,
-  endThread,
-  listThreadsFor,
-  openThread,
-  readMessages,
-  seeThread,
-  startThread,
-} from './service.ts';
+import { addMessage, endThread, listThreadsFor, openThread, readMessages, seeThread } from './service.ts';
+import { startThread } from './starting.ts';
 
 export const threadRoutes = [
   route(listThreads, {

@@ -1,12 +1,12 @@
-import { and, asc, desc, eq, gte, inArray, lte, ne, or, sql } from 'drizzle-orm';
+import { and, asc, desc, eq, gte, inArray, lte, ne, sql } from 'drizzle-orm';
 import { alias } from 'drizzle-orm/pg-core';
 import { Problem } from '#shared/problems/problems.ts';
 import type { Finding } from '#shared/red-flags/findings.ts';
 import type { PersonActor } from '../../db/actor.ts';
 import { alerts, checkIns } from '../../db/schema/check-ins.ts';
 import { findings, flagEventKinds, flagEvents, flags } from '../../db/schema/flags.ts';
-import { careTeamMembers, operationCards, patients } from '../../db/schema/patients.ts';
-import { people, personRoles } from '../../db/schema/people.ts';
+import { operationCards, patients } from '../../db/schema/patients.ts';
+import { people } from '../../db/schema/people.ts';
 import { threads } from '../../db/schema/threads.ts';
 import type { Tx } from '../../db/with-tx.ts';
 
@@ -211,32 +211,6 @@ export const nameOf = async (tx: Tx, clinicId: string, personId: string): Promis
     .from(people)
     .where(and(eq(people.clinicId, clinicId), eq(people.id, personId)));
   return rows[0]?.name ?? 'a colleague';
-};
-
-/** Who is told of a flag: the patient's care team, and from urgent up everybody on call. */
-export const peopleToTell = async (
-  tx: Tx,
-  { clinicId, patientId, withOnCall }: { clinicId: string; patientId: string; withOnCall: boolean },
-): Promise<string[]> => {
-  const onTeam = tx
-    .select({ personId: careTeamMembers.personId })
-    .from(careTeamMembers)
-    .where(and(eq(careTeamMembers.clinicId, clinicId), eq(careTeamMembers.patientId, patientId)));
-  const onCall = tx
-    .select({ personId: personRoles.personId })
-    .from(personRoles)
-    .where(and(eq(personRoles.clinicId, clinicId), eq(personRoles.role, 'on-call-clinician')));
-  const rows = await tx
-    .select({ id: people.id })
-    .from(people)
-    .where(
-      and(
-        eq(people.clinicId, clinicId),
-        eq(people.active, true),
-        withOnCall ? or(inArray(people.id, onTeam), inArray(people.id, onCall)) : inArray(people.id, onTeam),
-      ),
-    );
-  return rows.map(({ id }) => id);
 };
 
 /** The first clinician who had the flag of an answer on the screen, as recorded. */

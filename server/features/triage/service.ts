@@ -7,7 +7,8 @@ import type { Tx } from '../../db/with-tx.ts';
 import { notify } from '../../notifications/service.ts';
 import { announce } from '../../realtime/announce.ts';
 import { writeAudit } from '../audit/service.ts';
-import { firstSeenEvent, patientPersonOf, peopleToTell, type FlagRecord } from './queries.ts';
+import { peopleToTell } from './people-to-tell.ts';
+import { firstSeenEvent, patientPersonOf, type FlagRecord } from './queries.ts';
 
 export type FlagSource = {
   patientId: string;
@@ -37,7 +38,7 @@ export const addFlagEvent = async (
   return rows.length > 0;
 };
 
-/** Keeps findings once per rule. A finding found again takes the fuller values and the higher urgency. */
+/** Keeps findings once per rule. Found again, it takes the later values, but never a lower urgency. */
 const keepFindings = async (
   tx: Tx,
   flag: FlagRecord,
@@ -50,14 +51,14 @@ const keepFindings = async (
     .where(and(eq(findingRows.clinicId, flag.clinicId), eq(findingRows.flagId, flag.id)));
   for (const finding of found) {
     const before = known.find(({ code }) => code === finding.code);
-    const urgency =
-      before && compareUrgency(before.urgency, finding.urgency) < 0 ? before.urgency : finding.urgency;
+    // What was found at a higher urgency keeps the values that explain it.
+    if (before && compareUrgency(before.urgency, finding.urgency) < 0) continue;
     await tx
       .insert(findingRows)
       .values({ clinicId: flag.clinicId, flagId: flag.id, ...finding, foundAt: now })
       .onConflictDoUpdate({
         target: [findingRows.clinicId, findingRows.flagId, findingRows.code],
-        set: { urgency, values: finding.values, ruleVersion: finding.ruleVersion },
+        set: { urgency: finding.urgency, values: finding.values, ruleVersion: finding.ruleVersion },
       });
   }
   return found.filter(

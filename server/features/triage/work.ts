@@ -8,7 +8,7 @@ import type { PersonActor } from '../../db/actor.ts';
 import { flags } from '../../db/schema/flags.ts';
 import type { Tx } from '../../db/with-tx.ts';
 import { writeAudit } from '../audit/service.ts';
-import { replyAboutFlag } from '../threads/service.ts';
+import { replyAboutFlag } from '../threads/starting.ts';
 import { flagVisibleTo, nameOf, patientPersonOf, type FlagRecord } from './queries.ts';
 import { flagRowOf } from './round.ts';
 import { addFlagEvent, announceAlerts, announceFlag } from './service.ts';

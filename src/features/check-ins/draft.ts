@@ -7,10 +7,10 @@ import type { RuleCode, Urgency } from '#shared/red-flags/findings.ts';
 export type Told = { code: RuleCode; urgency: Urgency; told: string };
 
 /** An alert that went out from this check-in, and what it told. */
-export type SentAlert = { id: string; findings: Told[] };
+type SentAlert = { id: string; findings: Told[] };
 
 /** The caution that stands over the questions, and what takes it back when the tick was a mistake. */
-export type ShownCaution = { alertId: string; answersBefore: Answers; atBefore: string };
+type ShownCaution = { alertId: string; answersBefore: Answers; atBefore: string };
 
 /** A check-in under way, as it is kept on the device. */
 export type CheckInDraft = {

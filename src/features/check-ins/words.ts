@@ -9,7 +9,7 @@ import { formatDate, formatWeekday } from '#src/lib/format.ts';
 type T = TFunction<readonly ['check-in-screens', 'check-in', 'plan']>;
 
 /** "since Friday", "since surgery". */
-export function sinceWords(t: T, { lastCheckInDate, date }: CheckInContext): string {
+function sinceWords(t: T, { lastCheckInDate, date }: CheckInContext): string {
   const since = sinceLastCheckIn(lastCheckInDate, date);
   return t(
     since.key,
@@ -21,7 +21,7 @@ export const questionWords = (t: T, screen: Screen, context: CheckInContext): st
   t(screen.titleKey, { since: sinceWords(t, context) });
 
 /** "98.6 °F". */
-export function temperatureWords(t: T, { unit, tenths }: { unit: 'C' | 'F'; tenths: number }): string {
+function temperatureWords(t: T, { unit, tenths }: { unit: 'C' | 'F'; tenths: number }): string {
   return t('temperature.value', {
     degrees: Math.floor(tenths / 10),
     tenths: tenths % 10,

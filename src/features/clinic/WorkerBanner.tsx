@@ -9,10 +9,7 @@ function CallLine({ clinic: { onCallNumber } }: Props) {
   return (
     <>
       The phone lines stay open: on call{' '}
-      <a
-        href={telephoneHref(onCallNumber)}
-        className="font-bold whitespace-nowrap underline underline-offset-3"
-      >
+      <a href={telephoneHref(onCallNumber)} className="font-bold underline underline-offset-3">
         {onCallNumber}
       </a>
       .

@@ -27,10 +27,7 @@ export function OutOfHours({ clinic }: { clinic: ClinicCard }) {
         components={{
           call: (
             // The words come from the translation; the link must not be empty for the linter's eyes.
-            <a
-              href={telephoneHref(onCallNumber)}
-              className="font-bold whitespace-nowrap underline underline-offset-3"
-            >
+            <a href={telephoneHref(onCallNumber)} className="font-bold underline underline-offset-3">
               {onCallNumber}
             </a>
           ),

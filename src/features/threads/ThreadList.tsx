@@ -20,15 +20,20 @@ export function ThreadList({ side, selectedId = null }: Props) {
   const { data: threads, error, isFetching, refetch } = useThreads();
   const refusal = useRefusal(error);
   if (!threads) {
-    return error ? (
-      <ErrorState
-        title={t('list.failed')}
-        retry={{ label: t('common:tryAgain'), onRetry: () => void refetch(), busy: isFetching }}
-      >
-        {refusal}
-      </ErrorState>
-    ) : (
-      <LoadingState label={t('list.loading')} lines={6} />
+    // The rows bring their own space at the sides; beside them the clinic's list has none.
+    return (
+      <div className={side === 'clinic' ? 'px-5' : undefined}>
+        {error ? (
+          <ErrorState
+            title={t('list.failed')}
+            retry={{ label: t('common:tryAgain'), onRetry: () => void refetch(), busy: isFetching }}
+          >
+            {refusal}
+          </ErrorState>
+        ) : (
+          <LoadingState label={t('list.loading')} lines={6} />
+        )}
+      </div>
     );
   }
   if (threads.length === 0) {

@@ -22,13 +22,13 @@ export function ThreadRow({ thread, side, selected }: Props) {
     <li
       aria-current={selected ? 'true' : undefined}
       className={classNames(
-        'relative grid grid-cols-[minmax(0,1fr)_auto] gap-x-4 gap-y-1 border-b border-l-3 border-wire py-3.5 leading-snug',
+        'relative flex flex-wrap gap-x-4 gap-y-1 border-b border-l-3 border-wire py-3.5 leading-snug',
         'has-focus-visible:outline-3 has-focus-visible:-outline-offset-3 has-focus-visible:outline-focus',
         side === 'clinic' ? 'pr-5 pl-4' : 'px-3',
         selected ? 'border-l-leaf bg-sheet' : 'border-l-transparent hover:bg-bark-wash',
       )}
     >
-      <div className="min-w-0">
+      <div className="min-w-0 grow basis-40">
         <Link
           to={threadPlace(side, thread.id)}
           className="after:absolute after:inset-0 focus-visible:outline-none"
@@ -48,7 +48,7 @@ export function ThreadRow({ thread, side, selected }: Props) {
           {thread.lastText}
         </p>
       </div>
-      <div className="grid content-start justify-items-end gap-1.5 text-sm text-ink-soft">
+      <div className="ml-auto grid content-start justify-items-end gap-1.5 text-sm text-ink-soft">
         <time dateTime={thread.lastAt}>{formatMoment(thread.lastAt, nowMs, clinic.timeZone)}</time>
         <ThreadTag state={state} side={side} />
         <Badge count={unseen} label={t('list.unseen', { count: unseen })} />

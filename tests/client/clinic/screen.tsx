@@ -1,5 +1,5 @@
 import { QueryClientProvider } from '@tanstack/react-query';
-import { render } from '@testing-library/react';
+import { configure, render } from '@testing-library/react';
 import type { ReactElement } from 'react';
 import { createMemoryRouter, RouterProvider } from 'react-router-dom';
 import { vi } from 'vitest';
@@ -30,6 +30,10 @@ export const noorSignedIn: Me = {
   session: { idleEndsAt: null, endsAt: '2026-12-02T07:00:00.000Z' },
   writeToken: 'token',
 };
+
+/** Whole screens are slow to draw where a machine is busy with other tests; what is awaited is an event all the same. */
+configure({ asyncUtilTimeout: 8_000 });
+vi.setConfig({ testTimeout: 30_000 });
 
 type Sent = { method: string; path: string; body: unknown };
 /** What the server answers to one request: a value is a success, a problem a refusal, `lost` no answer at all. */

@@ -126,8 +126,8 @@ describe('closing a flag', () => {
     await screen.findByRole('dialog');
     return sent;
   }
-  const choose = (name: string) => user.click(screen.getByRole('radio', { name }));
-  const submit = () => user.click(screen.getByRole('button', { name: 'Close the flag' }));
+  const choose = (name: string) => user.click(screen.getByLabelText(name));
+  const submit = () => user.click(screen.getByText('Close the flag'));
 
   it('asks for an outcome, and for the words that some outcomes need, and sends nothing before', async () => {
     const sent = await openForm();
@@ -152,6 +152,6 @@ describe('closing a flag', () => {
     await choose('Yes');
     await submit();
     expect(await screen.findByText('Name who it was.')).toBeTruthy();
-    expect(screen.getByRole<HTMLInputElement>('radio', { name: 'Advised by phone' }).checked).toBe(true);
+    expect(screen.getByLabelText<HTMLInputElement>('Advised by phone').checked).toBe(true);
   });
 });

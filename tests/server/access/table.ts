@@ -6,9 +6,9 @@ import type { Answer, TestBrowser, TestWeb } from '#tests/support/web.ts';
 import { routeFixtures, type RouteFixture } from './route-fixtures.ts';
 import { relations, type Cast, type Relation, type Scene } from './scene.ts';
 
-export type Caller = Role | 'anonymous';
-export type Asked = Relation | 'missing' | 'none';
-export type AuditEntry = {
+type Caller = Role | 'anonymous';
+type Asked = Relation | 'missing' | 'none';
+type AuditEntry = {
   action: string;
   clinicId: string;
   personId: string | null;

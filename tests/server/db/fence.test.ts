@@ -43,7 +43,7 @@ describe('row security', () => {
       `select table_name::text as value from information_schema.columns
        where table_schema = 'public' and column_name = 'clinic_id'`,
     );
-    const outside = withClinic.filter((table) => !(clinicTables as string[]).includes(table));
+    const outside = withClinic.filter((table) => !clinicTables.includes(table));
     expect(outside.sort()).toEqual(['credentials', 'signed_in_sessions']);
   });
 

@@ -114,7 +114,7 @@ describe('as nobody', () => {
 describe('on a connection that served somebody before', () => {
   let pool: pg.Pool;
   const rowsSeen = async (run: (text: string) => Promise<pg.QueryResult>) =>
-    (await run('select clinic_id from patients')).rows;
+    (await run('select clinic_id from patients')).rows as unknown[];
 
   beforeAll(() => {
     pool = new pg.Pool({ connectionString: database.urls.app, max: 1 });

@@ -2,7 +2,8 @@ import { randomUUID } from 'node:crypto';
 import { afterAll, beforeAll, expect, test } from 'vitest';
 import { personIdOf } from '#server/demo/patients.ts';
 import { staffId } from '#server/demo/staff.ts';
-import { readMessages, startThread } from '#server/features/threads/service.ts';
+import { readMessages } from '#server/features/threads/service.ts';
+import { startThread } from '#server/features/threads/starting.ts';
 import { reply } from '#server/features/triage/work.ts';
 import { asPerson, demoDatabase, type DemoDatabase } from './demo.ts';
 

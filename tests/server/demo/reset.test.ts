@@ -9,7 +9,7 @@ import { demoClinicId } from '#server/demo/clinic.ts';
 import { personIdOf } from '#server/demo/patients.ts';
 import { staffId } from '#server/demo/staff.ts';
 import { clinicTables } from '#server/demo/tables.ts';
-import { startThread } from '#server/features/threads/service.ts';
+import { startThread } from '#server/features/threads/starting.ts';
 import { claim } from '#server/features/triage/work.ts';
 import { startSession } from '#server/http/sessions.ts';
 import { plantWholeClinic, type WholeClinic } from '../whole-clinic.ts';

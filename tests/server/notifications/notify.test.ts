@@ -109,10 +109,10 @@ describe('who is told', () => {
 describe('the wording', () => {
   it.each(notificationKinds)('of %s is the same for everybody but for the link', (kind) => {
     const [one, other] = ['https://espalier.example/round/1', 'https://espalier.example/messages/2'];
-    const [a, b] = [mailFor(kind, one!), mailFor(kind, other!)];
+    const [a, b] = [mailFor(kind, one), mailFor(kind, other)];
     expect(a.subject).toBe(b.subject);
-    expect(a.text.replaceAll(one!, '')).toBe(b.text.replaceAll(other!, ''));
-    expect(a.html.replaceAll(one!, '')).toBe(b.html.replaceAll(other!, ''));
+    expect(a.text.replaceAll(one, '')).toBe(b.text.replaceAll(other, ''));
+    expect(a.html.replaceAll(one, '')).toBe(b.html.replaceAll(other, ''));
     expect(a.text).toContain(one);
     expect(a.html).toContain(`href="${one}"`);
   });
