@@ -1,4 +1,4 @@
-import { ChevronDown } from 'lucide-react';
+import { ChevronDown, ChevronUp } from 'lucide-react';
 import { useState } from 'react';
 import { useTranslation } from 'react-i18next';
 import type { Today } from '#shared/plans/contract.ts';
@@ -23,11 +23,11 @@ export function HoldOffList({ items, therapist, reasons = false, atFirst = items
   const decider = therapist ?? tCommon('yourTherapist');
   const [all, setAll] = useState(false);
   // One or two more are shown at once: a press for them would be a press for nothing.
-  const folded = !all && items.length > atFirst + 2;
+  const long = items.length > atFirst + 2;
   return (
     <>
       <IconList
-        items={(folded ? items.slice(0, atFirst) : items).map(
+        items={(long && !all ? items.slice(0, atFirst) : items).map(
           ({ code, icon, usualWeek, usualDate, due }) => ({
             key: code,
             icon: precautionIcon(icon),
@@ -45,9 +45,16 @@ export function HoldOffList({ items, therapist, reasons = false, atFirst = items
           }),
         )}
       />
-      {folded ? (
-        <Button variant="outline" block icon={ChevronDown} onClick={() => setAll(true)}>
-          {t('today:holdOff.more', { count: items.length - atFirst })}
+      {long ? (
+        // It stays where it is, so that the focus is not lost with it.
+        <Button
+          variant="outline"
+          block
+          icon={all ? ChevronUp : ChevronDown}
+          aria-expanded={all}
+          onClick={() => setAll(!all)}
+        >
+          {all ? t('today:holdOff.fewer') : t('today:holdOff.more', { count: items.length - atFirst })}
         </Button>
       ) : null}
     </>

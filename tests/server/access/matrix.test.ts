@@ -1,6 +1,7 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { isPublic, type Route } from '#server/http/route.ts';
 import { allRoutes } from '#server/routes.ts';
+import type { ActingAs } from '#server/db/actor.ts';
 import { withTx } from '#server/db/with-tx.ts';
 import { cloneDatabase, type TestDatabase } from '#tests/support/database.ts';
 import { startWeb, type TestWeb } from '#tests/support/web.ts';
@@ -151,23 +152,32 @@ describe('the fence under the routes', () => {
     there = await plantWholeClinic(database);
   });
 
-  // The audit cannot even be read; what row security does to it is shown by what may be inserted.
-  it.each(fencedTables.filter((table) => table !== 'audit_entries'))(
+  const as = (actor: ActingAs, text: string, values: unknown[] = []) =>
+    withTx(database.pools.app, actor, async (tx) => {
+      const { rows } = await tx.$client.query<{ clinic: string }>(text, values);
+      return rows.map(({ clinic }) => clinic);
+    });
+  const somebody = ({ clinicId, therapist }: WholeClinic): ActingAs => ({
+    kind: 'person',
+    clinicId,
+    personId: therapist.personId,
+  });
+
+  // The audit cannot even be read: what row security does to it is shown below by what may be written.
+  it.each(['clinics', ...fencedTables].filter((table) => table !== 'audit_entries'))(
     'shows in %s the rows of the clinic that acts, and no other',
     async (table) => {
-      const clinicsSeen = (actor: Parameters<typeof withTx>[1]) =>
-        withTx(database.pools.app, actor, async (tx) => {
-          const { rows } = await tx.$client.query<{ clinic_id: string }>(
-            `select distinct clinic_id from ${table}`,
-          );
-          return rows.map(({ clinic_id }) => clinic_id);
-        });
-      const { clinicId, therapist } = here;
-      expect(await clinicsSeen({ kind: 'person', clinicId, personId: therapist.personId })).toEqual([
-        clinicId,
-      ]);
-      expect(await clinicsSeen({ kind: 'system', clinicId: there.clinicId })).toEqual([there.clinicId]);
-      expect(await clinicsSeen({ kind: 'anonymous' })).toEqual([]);
+      const text = `select distinct ${table === 'clinics' ? 'id' : 'clinic_id'} as clinic from ${table}`;
+      expect(await as(somebody(here), text)).toEqual([here.clinicId]);
+      expect(await as({ kind: 'system', clinicId: there.clinicId }, text)).toEqual([there.clinicId]);
+      expect(await as({ kind: 'anonymous' }, text)).toEqual([]);
     },
   );
+
+  it('takes audit entries of the clinic that acts, and of no other', async () => {
+    const text = `insert into audit_entries (clinic_id, at, actor_kind, action) values ($1, now(), 'system', 'probe')`;
+    await expect(as(somebody(here), text, [here.clinicId])).resolves.toEqual([]);
+    await expect(as(somebody(here), text, [there.clinicId])).rejects.toThrow('row-level security');
+    await expect(as({ kind: 'anonymous' }, text, [here.clinicId])).rejects.toThrow('row-level security');
+  });
 });

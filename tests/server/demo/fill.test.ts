@@ -185,7 +185,7 @@ test('two fills on the same date are the same but for the salts of passwords, wh
   } finally {
     await other.drop();
   }
-});
+}, 60_000);
 
 test('a demo filled before breakfast has its morning behind it, in the same order and on the same date', async () => {
   const early = await demoDatabase();
@@ -204,7 +204,7 @@ test('a demo filled before breakfast has its morning behind it, in the same orde
   } finally {
     await early.drop();
   }
-});
+}, 60_000);
 
 test('where one row cannot be written, nothing is', async () => {
   const other = await demoDatabase();
@@ -221,4 +221,4 @@ test('where one row cannot be written, nothing is', async () => {
   } finally {
     await other.drop();
   }
-});
+}, 60_000);

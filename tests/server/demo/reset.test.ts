@@ -101,7 +101,7 @@ test('so it does where the owner could pass row security', async () => {
   await demo.actAsSuperuser('reset', now);
   expect(await rowsOf(demo, other.clinicId)).toEqual(untouched);
   expect(await rowsOf(demo, demoClinicId, withoutSalts)).toEqual(fresh);
-});
+}, 60_000);
 
 test('a clinic with the demo’s id that is not marked as a demo is refused, and stays', async () => {
   await demo.asSuperuser.query('update clinics set is_demo = false where id = $1', [demoClinicId]);
