@@ -93,6 +93,7 @@ CREATE TABLE "flag_events" (
 	"at" timestamp with time zone NOT NULL,
 	"by_person_id" uuid,
 	"detail" text,
+	"note" text,
 	CONSTRAINT "flag_events_clinic_id_id_pk" PRIMARY KEY("clinic_id","id")
 );
 --> statement-breakpoint
@@ -110,7 +111,6 @@ CREATE TABLE "flags" (
 	"closed_at" timestamp with time zone,
 	"outcome" text,
 	"worth_raising" text,
-	"outcome_note" text,
 	CONSTRAINT "flags_clinic_id_id_pk" PRIMARY KEY("clinic_id","id"),
 	CONSTRAINT "flags_source" UNIQUE("clinic_id","source_author_id","source_client_id")
 );

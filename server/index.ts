@@ -8,6 +8,9 @@ import { endWithParent } from './process/parent.ts';
 import { listenForHints } from './realtime/bridge.ts';
 import { openSockets } from './realtime/sockets.ts';
 
+// First of all, so that a start whose parent is gone ends too.
+endWithParent();
+
 const env = readWebEnv(process.env);
 const log = createLog('web', env.LOG_LEVEL);
 const clock = () => new Date();
@@ -65,4 +68,3 @@ const onSignal = () => {
 };
 process.on('SIGTERM', onSignal);
 process.on('SIGINT', onSignal);
-endWithParent();

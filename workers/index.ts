@@ -5,6 +5,9 @@ import { openMailer } from '#server/notifications/mailer.ts';
 import { endWithParent } from '#server/process/parent.ts';
 import { startWork } from './work.ts';
 
+// First of all, so that a start whose parent is gone ends too.
+endWithParent();
+
 const env = readWorkerEnv(process.env);
 const log = createLog('worker', env.LOG_LEVEL);
 const pools = openPools({ app: env.APP_DATABASE_URL, gate: env.GATE_DATABASE_URL }, log);
@@ -42,4 +45,3 @@ const onSignal = () => {
 };
 process.on('SIGTERM', onSignal);
 process.on('SIGINT', onSignal);
-endWithParent();

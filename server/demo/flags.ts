@@ -25,20 +25,25 @@ const handledColumns = (handling: Handling | null, date: string): Partial<FlagRe
   const { by, claimedAt, closed } = handling;
   const claimed = { claimedBy: staffId(by), claimedAt: instantAt(date, claimedAt) };
   if (!closed) return { ...claimed, state: 'claimed' };
-  const { outcome, worthRaising, note } = closed.resolution;
+  const { outcome, worthRaising } = closed.resolution;
   return {
     ...claimed,
     state: 'closed',
     closedAt: instantAt(date, closed.at),
     outcome,
     worthRaising,
-    outcomeNote: note,
   };
 };
 
 /** What is on record about a flag, in the order in which it happened. */
 const eventsOf = (flag: FlagRecord, raisedAt: Date, handling: Handling | null, date: string): EventRow[] => {
-  const event = (kind: EventRow['kind'], at: Date, by: string | null, detail: string | null): EventRow => ({
+  const event = (
+    kind: EventRow['kind'],
+    at: Date,
+    by: string | null,
+    detail: string | null,
+    note: string | null = null,
+  ): EventRow => ({
     clinicId: demoClinicId,
     id: idOf('flag-event', flag.id, kind),
     flagId: flag.id,
@@ -46,6 +51,7 @@ const eventsOf = (flag: FlagRecord, raisedAt: Date, handling: Handling | null, d
     at,
     byPersonId: by,
     detail,
+    note,
   });
   const events = [event('raised', raisedAt, null, flag.urgency)];
   if (!handling) return events;
@@ -54,7 +60,10 @@ const eventsOf = (flag: FlagRecord, raisedAt: Date, handling: Handling | null, d
   events.push(event('seen', instantAt(date, seenAt), person, null));
   if (claimedAt !== undefined) events.push(event('claimed', instantAt(date, claimedAt), person, null));
   if (reply) events.push(event('replied', instantAt(date, reply.at, 20), person, idOf('reply', flag.id)));
-  if (closed) events.push(event('closed', instantAt(date, closed.at), person, closed.resolution.outcome));
+  if (closed) {
+    const { outcome, note } = closed.resolution;
+    events.push(event('closed', instantAt(date, closed.at), person, outcome, note));
+  }
   return events;
 };
 
@@ -79,7 +88,6 @@ export const flagOf = (record: PatientRecord, checkIn: DemoCheckIn): DemoFlag | 
     closedAt: null,
     outcome: null,
     worthRaising: null,
-    outcomeNote: null,
     ...handledColumns(handling, row.localDate),
   };
   return {

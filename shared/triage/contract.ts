@@ -55,6 +55,8 @@ export const flagEvent = z.object({
   at: z.iso.datetime(),
   by: z.string().nullable(),
   detail: z.string().nullable(),
+  /** What a person wrote about it. */
+  note: z.string().nullable(),
 });
 
 export const flagCase = flagRow.extend({

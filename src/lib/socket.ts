@@ -20,7 +20,7 @@ const touchedBy: Record<Hint['topic'], readonly PrefixName[]> = {
  * Connect, reconnect and hint are one case: what is on the screen is fetched again. One round is in flight at
  * a time; what arrives meanwhile is gathered into the next round, so a burst of hints costs two fetches.
  */
-function createCatchUp(refetch: (prefix: PrefixName) => Promise<unknown>): (hint: Hint) => void {
+export function createCatchUp(refetch: (prefix: PrefixName) => Promise<unknown>): (hint: Hint) => void {
   const waiting = new Set<PrefixName>();
   let running = false;
   async function run() {

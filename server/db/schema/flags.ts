@@ -33,7 +33,6 @@ export const flags = pgTable(
     closedAt: instant(),
     outcome: text({ enum: outcomes }),
     worthRaising: text({ enum: ['yes', 'no'] }),
-    outcomeNote: text(),
   },
   (table) => [
     clinicKey(table),
@@ -94,6 +93,8 @@ export const flagEvents = pgTable(
     /** Null for what the system did. */
     byPersonId: uuid(),
     detail: text(),
+    /** What a person wrote about it, as when closing a flag. */
+    note: text(),
   },
   (table) => [
     clinicKey(table),

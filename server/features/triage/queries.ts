@@ -163,6 +163,7 @@ export const eventsOf = (tx: Tx, flag: FlagRecord) =>
       at: flagEvents.at,
       by: people.name,
       detail: flagEvents.detail,
+      note: flagEvents.note,
     })
     .from(flagEvents)
     .leftJoin(people, and(eq(people.clinicId, flagEvents.clinicId), eq(people.id, flagEvents.byPersonId)))

@@ -27,7 +27,7 @@ const sourceIs = (clinicId: string, source: Pick<FlagSource, 'sourceAuthorId' | 
 export const addFlagEvent = async (
   tx: Tx,
   flag: Pick<FlagRecord, 'clinicId' | 'id'>,
-  event: { kind: (typeof flagEvents.$inferInsert)['kind']; byPersonId?: string; detail?: string },
+  event: Pick<typeof flagEvents.$inferInsert, 'kind' | 'byPersonId' | 'detail' | 'note'>,
   now: Date,
 ): Promise<boolean> => {
   const rows = await tx
@@ -133,7 +133,14 @@ export const raiseFlag = async (
       .set({
         urgency: rises ? urgency : flag.urgency,
         ...(reopened
-          ? { state: 'open' as const, claimedBy: null, claimedAt: null, closedAt: null, outcome: null }
+          ? {
+              state: 'open' as const,
+              claimedBy: null,
+              claimedAt: null,
+              closedAt: null,
+              outcome: null,
+              worthRaising: null,
+            }
           : {}),
       })
       .where(and(eq(flags.clinicId, clinicId), eq(flags.id, flag.id)));

@@ -95,7 +95,7 @@ export const close = async (
   if (flag.state === 'claimed' && flag.claimedBy !== actor.personId) throw await refusalOf(tx, actor, flagId);
   const closed = await tx
     .update(flags)
-    .set({ state: 'closed', closedAt: now, outcome, worthRaising, outcomeNote: note || null })
+    .set({ state: 'closed', closedAt: now, outcome, worthRaising })
     .where(
       and(
         eq(flags.clinicId, flag.clinicId),
@@ -108,7 +108,12 @@ export const close = async (
     )
     .returning({ id: flags.id });
   if (closed.length === 0) throw await refusalOf(tx, actor, flagId);
-  await addFlagEvent(tx, flag, { kind: 'closed', byPersonId: actor.personId, detail: outcome }, now);
+  await addFlagEvent(
+    tx,
+    flag,
+    { kind: 'closed', byPersonId: actor.personId, detail: outcome, note: note || null },
+    now,
+  );
   await writeAudit(
     tx,
     actor,

@@ -25,6 +25,11 @@ export function CaseHistory({ flag, timeZone, nowMs }: Props) {
               </time>
               <span className="min-w-0 grow basis-48">
                 {[eventSentence(event), eventDetail(event)].filter(Boolean).join(': ')}
+                {event.note ? (
+                  <span className="block wrap-anywhere whitespace-pre-wrap text-ink-soft" dir="auto">
+                    {event.note}
+                  </span>
+                ) : null}
               </span>
             </li>
           ))}

@@ -109,6 +109,7 @@ describe('an open case', () => {
           at: '2026-12-01T12:20:00.000Z',
           by: callum.name,
           detail: 'advised-by-phone',
+          note: null,
         },
       ],
     });

@@ -54,7 +54,9 @@ export function aCase(given: Partial<FlagCase> = {}): FlagCase {
     answeredAt: '2026-12-01T06:49:00.000Z',
     note: null,
     inForce: [],
-    events: [{ id: 'e1', kind: 'raised', at: '2026-12-01T06:50:00.000Z', by: null, detail: null }],
+    events: [
+      { id: 'e1', kind: 'raised', at: '2026-12-01T06:50:00.000Z', by: null, detail: null, note: null },
+    ],
     earlier: [],
     threadId: null,
     outcome: null,

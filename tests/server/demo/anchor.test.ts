@@ -113,9 +113,10 @@ test('what users have added moves too, and stays what it was', async () => {
     await query(`select received_at, local_date::text, answers from check_ins
       where author_id = '${personIdOf('Ines Valcourt')}' order by received_at desc limit 1`),
   ).toEqual([{ received_at: movedAfternoon, local_date: '2026-11-03', answers: { painNow: 3 } }]);
-  expect(await query(`select closed_at, outcome, outcome_note from flags where id = '${flagId}'`)).toEqual([
-    { closed_at: movedAfternoon, outcome: 'no-action-needed', outcome_note: 'Overdid it.' },
-  ]);
+  expect(
+    await query(`select closed_at, outcome, (select e.note from flag_events e where e.flag_id = flags.id and e.kind = 'closed') as outcome_note
+      from flags where id = '${flagId}'`),
+  ).toEqual([{ closed_at: movedAfternoon, outcome: 'no-action-needed', outcome_note: 'Overdid it.' }]);
   expect(await query(`select sent_at from messages where text = 'A pillowcase is fine.'`)).toEqual([
     { sent_at: movedAfternoon },
   ]);

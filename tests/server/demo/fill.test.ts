@@ -133,7 +133,8 @@ test('closed flags have an outcome with the words it needs, claimed ones a name,
     claimed: boolean;
     closed: boolean;
   }>(
-    `select state, outcome, outcome_note as note, claimed_by is not null as claimed, closed_at is not null as closed from flags`,
+    `select state, outcome,
+      (select e.note from flag_events e where e.flag_id = flags.id and e.kind = 'closed') as note, claimed_by is not null as claimed, closed_at is not null as closed from flags`,
   );
   for (const { state, outcome, note, claimed, closed } of flags) {
     expect(claimed).toBe(state !== 'open');

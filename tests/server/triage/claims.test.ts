@@ -46,7 +46,9 @@ const reply = (desk: TestBrowser, flagId: string, id = randomUUID(), text = 'I w
   desk.call('post', `/api/flags/${flagId}/replies`, { id, text });
 const rowOf = async (flagId: string) => {
   const { rows } = await database.asSuperuser.query<Record<string, unknown>>(
-    'select state, claimed_by, claimed_at, closed_at, outcome, outcome_note, worth_raising from flags where id = $1',
+    `select state, claimed_by, claimed_at, closed_at, outcome, worth_raising,
+      (select e.note from flag_events e where e.flag_id = flags.id and e.kind = 'closed') as outcome_note
+    from flags where id = $1`,
     [flagId],
   );
   return rows[0]!;
