@@ -134,11 +134,12 @@ const besideUsual = ({ painNow, usual }: Values): string => {
 /** A finding in words for clinicians. The words of a rule that is no longer known are its code. */
 export const explain = (finding: Finding, rules: readonly Rule[] = shippedRules): Explanation => {
   const rule = rules.find(({ code }) => code === finding.code);
+  const title = titles[finding.code](finding.values);
   return {
-    title: titles[finding.code](finding.values),
+    title,
     sentence: [
-      `Answered for day ${String(finding.values.day)}.`,
-      besideUsual(finding.values),
+      `Day ${String(finding.values.day)}.`,
+      title.includes('usual') ? '' : besideUsual(finding.values),
       rule?.clinicianText ?? '',
       `Rule ${finding.code}, version ${finding.ruleVersion}.`,
     ]

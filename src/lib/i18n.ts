@@ -13,6 +13,8 @@ const files = import.meta.glob<{ default: Record<string, unknown> }>([
 
 /** Starts with the words of the shell; `loadWords` brings the rest. */
 export async function startI18n(): Promise<void> {
+  // Starting twice would forget what was loaded in between.
+  if (i18next.isInitialized) return;
   await i18next.use(initReactI18next).init({
     lng: 'en' satisfies Language,
     supportedLngs: languages,

@@ -149,7 +149,7 @@ describe("a made-up patient's name, note, messages, subject and outcome", () => 
       ...(await rowsOf('check_ins')),
       ...(await rowsOf('messages')),
       ...(await rowsOf('threads')),
-      ...(await rowsOf('flags')),
+      ...(await rowsOf('flag_events')),
     ].join('\n');
     for (const canary of canaries) expect(kept).toContain(canary);
     expect(new Set(statuses)).toEqual(new Set([200, 201, 400, 404, 409, 422, 500]));

@@ -93,6 +93,22 @@ describe('who is told', () => {
     expect(new Set(rows.map((row) => row.kind))).toEqual(new Set([kind]));
   });
 
+  it.each([
+    ['has no care team', false],
+    ['has one that has left', true],
+  ])('of a flag is every clinician where the patient %s and nobody is on call', async (_what, hadTeam) => {
+    const gone = await makePerson(database, clinicId, ['therapist']);
+    const clinicians = [noor, await makePerson(database, clinicId, ['clinical-lead'])];
+    await makePerson(database, clinicId, ['administrator']);
+    const patient = await makePatient(database, clinicId, hadTeam ? { lead: gone } : {});
+    await database.asSuperuser.query('update people set active = false where id = $1', [gone.personId]);
+    await plantCheckIn(database, patient, { answers: { danger: ['bleeding'] }, evaluated: false });
+    await sweepUnevaluated(database.pools.app, new Date(Date.now() + 11_000), silentLog);
+    expect((await notified()).map(({ person_id }) => person_id).sort()).toEqual(
+      clinicians.map(({ personId }) => personId).sort(),
+    );
+  });
+
   it('of a message is the other side, and never the one who wrote it', async () => {
     const patient = await makePatient(database, clinicId, { lead: noor });
     const { threadId } = await plantThread(database, patient);

@@ -52,10 +52,18 @@ describe('a finding in words for clinicians', () => {
     expect(explain(finding!)).toEqual({
       title: 'Fall; pain 8, usual 3',
       sentence:
-        'Answered for day 31. Pain now 8, usual 3. Fall with pain up 2 or more or said to hurt more since, lost use, changed shape, or legs that do not bear. Rule fall-with-injury, version 1.',
+        'Day 31. Fall with pain up 2 or more or said to hurt more since, lost use, changed shape, or legs that do not bear. Rule fall-with-injury, version 1.',
       source: 'Default of ours. The change of 2 points: Farrar et al., Pain 2001;94:149-158, from memory.',
       ruleVersion: 1,
     });
+  });
+
+  test('says pain beside the usual in the sentence where the title does not', () => {
+    const [finding] = findingsOf(
+      { painNow: 4, symptoms: ['hot'], temperature: { unit: 'C', tenths: 383 } },
+      { day: 31, usually: [3, 3, 3] },
+    );
+    expect(explain(finding!).sentence).toMatch(/^Day 31\. Pain now 4, usual 3\. /);
   });
 
   test('never shows a code, a gap or a missing value', () => {

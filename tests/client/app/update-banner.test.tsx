@@ -1,0 +1,43 @@
+import { act, render, screen } from '@testing-library/react';
+import { beforeAll, describe, expect, it } from 'vitest';
+import { UpdateBanner } from '#src/app/UpdateBanner.tsx';
+import { buildAnnounced } from '#src/lib/api.ts';
+import { beginBusy } from '#src/lib/busy.ts';
+import { startI18n } from '#src/lib/i18n.ts';
+
+const banner = () => screen.queryByText('A new version of Espalier is ready.');
+
+beforeAll(startI18n);
+
+describe('after an update of the server', () => {
+  it('an old tab is told to reload', () => {
+    render(<UpdateBanner />);
+    expect(banner()).toBeNull();
+    act(() => buildAnnounced.emit('newer'));
+    expect(banner()).not.toBeNull();
+  });
+
+  it('but never in mid-form: the banner waits until everything that was begun is done', () => {
+    const endCheckIn = beginBusy();
+    const endMessage = beginBusy();
+    render(<UpdateBanner />);
+    act(() => buildAnnounced.emit('newer'));
+    expect(banner()).toBeNull();
+    act(endCheckIn);
+    act(endCheckIn);
+    expect(banner()).toBeNull();
+    act(endMessage);
+    expect(banner()).not.toBeNull();
+  });
+
+  it('and what is begun afterwards takes it away again', () => {
+    render(<UpdateBanner />);
+    act(() => buildAnnounced.emit('newer'));
+    let end = () => {};
+    act(() => {
+      end = beginBusy();
+    });
+    expect(banner()).toBeNull();
+    act(end);
+  });
+});
