@@ -4,7 +4,7 @@ import type { ReactNode } from 'react';
 import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest';
 import type { Me } from '#shared/accounts/contract.ts';
 import { useIdleClock } from '#src/app/idle-clock.ts';
-import { sessionQuery } from '#src/app/session.tsx';
+import { sessionQuery, useSession } from '#src/app/session.tsx';
 import { createQueryClient } from '#src/lib/query-client.ts';
 import { noorSignedIn, serve } from '../clinic/screen.tsx';
 
@@ -17,19 +17,16 @@ const until = (idleEndsAt: string): Me => ({
 });
 
 /** What the server holds: another tab may change it. */
-let idleEndsAt: string;
+let onServer: Me;
 
 function start(me = until(at(15))) {
-  idleEndsAt = me.session.idleEndsAt ?? '';
+  onServer = me;
   const queryClient = createQueryClient();
   queryClient.setQueryData(sessionQuery.queryKey, { me });
   const wrapper = ({ children }: { children: ReactNode }) => (
     <QueryClientProvider client={queryClient}>{children}</QueryClientProvider>
   );
-  const hook = renderHook(
-    () => useIdleClock(queryClient.getQueryData(sessionQuery.queryKey)?.me?.session.idleEndsAt ?? null),
-    { wrapper },
-  );
+  const hook = renderHook(() => useIdleClock(useSession().data?.me?.session.idleEndsAt ?? null), { wrapper });
   return { queryClient, hook };
 }
 
@@ -38,7 +35,7 @@ const pass = (ms: number) => act(() => vi.advanceTimersByTimeAsync(ms));
 beforeEach(() => {
   vi.useFakeTimers({ now: startMs });
   serve({
-    'GET /api/session': () => ({ me: until(idleEndsAt) }),
+    'GET /api/session': () => ({ me: onServer }),
     'POST /api/session/activity': () => ({ idleEndsAt: at(99), endsAt: at(720) }),
   });
 });
@@ -59,7 +56,7 @@ describe('the idle clock', () => {
 
   it('does not warn when another tab has kept the session alive', async () => {
     const { hook, queryClient } = start();
-    idleEndsAt = at(25);
+    onServer = until(at(25));
     await pass(14 * minute + 1);
     expect(hook.result.current.warning).toBe(false);
     expect(queryClient.getQueryData(sessionQuery.queryKey)?.me?.session.idleEndsAt).toBe(at(25));
@@ -71,7 +68,6 @@ describe('the idle clock', () => {
     await act(async () => hook.result.current.stay());
     await pass(0);
     expect(queryClient.getQueryData(sessionQuery.queryKey)?.me?.session.idleEndsAt).toBe(at(99));
-    hook.rerender();
     expect(hook.result.current.warning).toBe(false);
   });
 

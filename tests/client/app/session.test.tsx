@@ -15,10 +15,10 @@ vi.mock('#src/lib/socket.ts', () => ({ connectHints: () => () => undefined }));
 const patient: Me = { ...noorSignedIn, personId: 'ines', roles: ['patient'] };
 
 function SignInPlace() {
-  const { search, state } = useLocation();
+  const place = useLocation();
   return (
     <p>
-      Signed out {search} {JSON.stringify(state)}
+      Signed out {place.search} {JSON.stringify(place.state)}
     </p>
   );
 }

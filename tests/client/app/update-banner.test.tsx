@@ -1,8 +1,8 @@
-import { act, render, screen } from '@testing-library/react';
+import { act, render, renderHook, screen } from '@testing-library/react';
 import { beforeAll, describe, expect, it } from 'vitest';
 import { UpdateBanner } from '#src/app/UpdateBanner.tsx';
 import { buildAnnounced } from '#src/lib/api.ts';
-import { beginBusy } from '#src/lib/busy.ts';
+import { useBusyWhile } from '#src/lib/busy.ts';
 import { startI18n } from '#src/lib/i18n.ts';
 
 const banner = () => screen.queryByText('A new version of Espalier is ready.');
@@ -18,26 +18,22 @@ describe('after an update of the server', () => {
   });
 
   it('but never in mid-form: the banner waits until everything that was begun is done', () => {
-    const endCheckIn = beginBusy();
-    const endMessage = beginBusy();
+    const checkIn = renderHook(({ begun }) => useBusyWhile(begun), { initialProps: { begun: true } });
+    const message = renderHook(() => useBusyWhile(true));
     render(<UpdateBanner />);
     act(() => buildAnnounced.emit('newer'));
     expect(banner()).toBeNull();
-    act(endCheckIn);
-    act(endCheckIn);
+    checkIn.rerender({ begun: false });
     expect(banner()).toBeNull();
-    act(endMessage);
+    message.unmount();
     expect(banner()).not.toBeNull();
   });
 
   it('and what is begun afterwards takes it away again', () => {
     render(<UpdateBanner />);
     act(() => buildAnnounced.emit('newer'));
-    let end = () => {};
-    act(() => {
-      end = beginBusy();
-    });
+    expect(banner()).not.toBeNull();
+    renderHook(() => useBusyWhile(true));
     expect(banner()).toBeNull();
-    act(end);
   });
 });

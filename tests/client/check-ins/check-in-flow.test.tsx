@@ -47,6 +47,8 @@ const receipt = (body: unknown) => {
   const { id, checkInId } = body as { id: string; checkInId: string };
   return { id, checkInId, receivedAt: '2026-12-01T08:41:00.000Z', seen: null };
 };
+const json = (body: unknown) =>
+  new Response(JSON.stringify(body), { headers: { 'content-type': 'application/json' } });
 const reviewed = () =>
   aDraft({
     answers: {
@@ -160,22 +162,13 @@ describe('an emergency answer', () => {
     const sent = serve({
       'POST /api/alerts': ({ body }) => (online ? receipt(body) : lost),
     });
-    vi.stubGlobal(
-      'fetch',
-      (
-        (known: typeof fetch): typeof fetch =>
-        async (address, init) => {
-          if (init?.method === 'GET' && String(address).startsWith('/api/alerts/')) {
-            const body = JSON.stringify({
-              ...receipt({ id: String(address).split('/').at(-1), checkInId: aDraft().id }),
-              seen: seen ? { by: 'Petra Lindqvist', at: '2026-12-01T08:43:00.000Z' } : null,
-            });
-            return new Response(body, { headers: { 'content-type': 'application/json' } });
-          }
-          return known(address, init);
-        }
-      )(fetch),
-    );
+    const known = fetch;
+    vi.stubGlobal('fetch', async (address: string, init: RequestInit) => {
+      if (init.method !== 'GET') return known(address, init);
+      const id = address.split('/').at(-1);
+      const petra = { by: 'Petra Lindqvist', at: '2026-12-01T08:43:00.000Z' };
+      return json({ ...receipt({ id, checkInId: aDraft().id }), seen: seen ? petra : null });
+    });
     const { queryClient } = await show(aDraft({ at: 'danger' }));
     await tick('Chest pain or trouble breathing');
     expect(heading().textContent).toContain('Call 911 now');
@@ -197,18 +190,12 @@ describe('an emergency answer', () => {
       'POST /api/alerts': ({ body }) => receipt(body),
     });
     const known = fetch;
-    vi.stubGlobal('fetch', ((address, init) => {
-      const mistake = /^\/api\/alerts\/([^/]+)\/mistakes$/.exec(String(address));
+    vi.stubGlobal('fetch', async (address: string, init: RequestInit) => {
+      const mistake = /^\/api\/alerts\/([^/]+)\/mistakes$/.exec(address);
       if (mistake) sent.push({ method: 'POST', path: 'mistake', body: mistake[1] });
-      if (mistake || init?.method === 'GET') {
-        return Promise.resolve(
-          new Response(JSON.stringify(receipt({ id: 'x', checkInId: 'y' })), {
-            headers: { 'content-type': 'application/json' },
-          }),
-        );
-      }
+      if (mistake || init.method === 'GET') return json(receipt({ id: 'x', checkInId: 'y' }));
       return known(address, init);
-    }) satisfies typeof fetch);
+    });
     await show(aDraft({ at: 'danger' }));
     await tick('Hand cold, pale or blue');
     await press('I ticked this by mistake');

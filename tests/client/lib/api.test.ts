@@ -7,7 +7,7 @@ import { ApiProblem, Unreachable } from '#src/lib/problem.ts';
 import { serverNow } from '#src/lib/server-clock.ts';
 
 let answer: () => Response | Promise<Response>;
-const fetched = vi.fn(async (_address: string, _init: RequestInit) => answer());
+const fetched = vi.fn<(address: string, init: RequestInit) => Promise<Response>>(async () => answer());
 
 const json = (body: unknown, init: ResponseInit = {}) =>
   new Response(JSON.stringify(body), {

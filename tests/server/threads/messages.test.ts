@@ -222,43 +222,6 @@ describe('a closed thread', () => {
   });
 });
 
-describe('text', () => {
-  it.each([
-    ['markup', '<script>alert(1)</script> <b>5 > 3</b> &amp; "quotes"'],
-    ['right-to-left overrides', 'abc \u202Eevil\u202C \u2066isolated\u2069'],
-    ['emoji made of several characters', '👩🏽‍⚕️ 👍🏿 e\u0301'],
-    ['line breaks and tabs', 'one\ntwo\r\n\tthree'],
-    ['eight thousand characters', 'x'.repeat(8000)],
-  ])('with %s comes back exactly as it was sent', async (_what, text) => {
-    const sent = await post(phone, text);
-    expect(sent.status, sent.text).toBe(201);
-    expect((await page(desk)).messages.at(-1)?.text).toBe(text);
-  });
-
-  it.each([
-    ['a zero byte', 'a\u0000b'],
-    ['a bell', 'a\u0007b'],
-    ['an escape', '\u001b[31mred'],
-    ['half a character', 'broken \udc00'],
-    ['nothing but blanks', ' \n\t '],
-    ['more than eight thousand characters', 'x'.repeat(8001)],
-  ])('with %s is refused, with the field named, and nothing is kept', async (_what, text) => {
-    const refused = await post(phone, text);
-    expect([refused.status, refused.body]).toMatchObject([422, { errors: [{ field: 'text' }] }]);
-    expect((await page(phone)).messages).toHaveLength(1);
-  });
-
-  it('of a subject is held to the same: no zero byte', async () => {
-    const message = { id: randomUUID(), text: 'Hello.' };
-    const refused = await phone.call('post', '/api/threads', {
-      id: randomUUID(),
-      subject: 'a\u0000',
-      message,
-    });
-    expect([refused.status, refused.body]).toMatchObject([422, { errors: [{ field: 'subject' }] }]);
-  });
-});
-
 it('is told to try again, and nothing is kept, while somebody holds the thread for too long', async () => {
   const holder = await database.asSuperuser.connect();
   await holder.query('begin');
