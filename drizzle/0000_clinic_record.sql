@@ -18,7 +18,7 @@ CREATE TABLE "alert_mistakes" (
 	"alert_id" uuid NOT NULL,
 	"author_id" uuid NOT NULL,
 	"client_id" uuid NOT NULL,
-	"answered_at" timestamp with time zone NOT NULL,
+	"answered_at_device" text NOT NULL,
 	"received_at" timestamp with time zone NOT NULL,
 	CONSTRAINT "alert_mistakes_clinic_id_id_pk" PRIMARY KEY("clinic_id","id"),
 	CONSTRAINT "alert_mistakes_author_client_id" UNIQUE("clinic_id","author_id","client_id")
@@ -32,6 +32,7 @@ CREATE TABLE "alerts" (
 	"client_id" uuid NOT NULL,
 	"answers" jsonb NOT NULL,
 	"answered_at" timestamp with time zone NOT NULL,
+	"answered_at_device" text,
 	"received_at" timestamp with time zone NOT NULL,
 	"local_date" date NOT NULL,
 	"clock_doubtful" boolean DEFAULT false NOT NULL,
@@ -50,6 +51,7 @@ CREATE TABLE "check_ins" (
 	"client_id" uuid NOT NULL,
 	"answers" jsonb NOT NULL,
 	"answered_at" timestamp with time zone NOT NULL,
+	"answered_at_device" text,
 	"received_at" timestamp with time zone NOT NULL,
 	"local_date" date NOT NULL,
 	"clock_doubtful" boolean DEFAULT false NOT NULL,
@@ -76,13 +78,14 @@ CREATE TABLE "findings" (
 	"clinic_id" uuid NOT NULL,
 	"id" uuid DEFAULT gen_random_uuid() NOT NULL,
 	"flag_id" uuid NOT NULL,
+	"source_id" uuid NOT NULL,
 	"code" text NOT NULL,
 	"rule_version" integer NOT NULL,
 	"urgency" text NOT NULL,
 	"values" jsonb NOT NULL,
-	"found_at" timestamp with time zone NOT NULL,
+	"told_at" timestamp with time zone NOT NULL,
 	CONSTRAINT "findings_clinic_id_id_pk" PRIMARY KEY("clinic_id","id"),
-	CONSTRAINT "findings_once" UNIQUE("clinic_id","flag_id","code")
+	CONSTRAINT "findings_once" UNIQUE("clinic_id","flag_id","source_id","code")
 );
 --> statement-breakpoint
 CREATE TABLE "flag_events" (
@@ -352,7 +355,7 @@ CREATE INDEX "check_ins_clinic_id_patient_id_answered_at_index" ON "check_ins" U
 CREATE INDEX "check_ins_unevaluated" ON "check_ins" USING btree ("received_at") WHERE evaluated_at is null;--> statement-breakpoint
 CREATE INDEX "flag_events_clinic_id_flag_id_at_index" ON "flag_events" USING btree ("clinic_id","flag_id","at");--> statement-breakpoint
 CREATE UNIQUE INDEX "flag_events_raised_once" ON "flag_events" USING btree ("clinic_id","flag_id") WHERE kind = 'raised';--> statement-breakpoint
-CREATE UNIQUE INDEX "flag_events_seen_once" ON "flag_events" USING btree ("clinic_id","flag_id","by_person_id") WHERE kind = 'seen';--> statement-breakpoint
+CREATE UNIQUE INDEX "flag_events_seen_once" ON "flag_events" USING btree ("clinic_id","flag_id","by_person_id","detail") WHERE kind = 'seen';--> statement-breakpoint
 CREATE UNIQUE INDEX "flag_events_replied_once" ON "flag_events" USING btree ("clinic_id","flag_id","detail") WHERE kind = 'replied';--> statement-breakpoint
 CREATE INDEX "flags_round" ON "flags" USING btree ("clinic_id","raised_at") WHERE state <> 'closed';--> statement-breakpoint
 CREATE INDEX "flags_clinic_id_patient_id_raised_at_index" ON "flags" USING btree ("clinic_id","patient_id","raised_at");--> statement-breakpoint

@@ -68,12 +68,18 @@ export const startWork = async (options: WorkOptions): Promise<{ stop: () => Pro
 
   const tasks = tasksOf(options);
   const workerIds = new Map<string, string>();
+  const wakeUp = (name: string): void => {
+    const id = workerIds.get(name);
+    if (id) boss.notifyWorker(id);
+  };
   const take = async <Name extends JobName>(name: Name): Promise<void> => {
     const schema = jobPayloads[name];
     const id = await boss.work<JobPayload<Name>>(
       name,
       { includeMetadata: true, batchSize: 1, pollingIntervalSeconds: 1 },
       async (jobs) => {
+        // Work was found, so there may be more: look again at once rather than at the next poll.
+        wakeUp(name);
         for (const job of jobs) {
           try {
             const payload = schema.parse(job.data) as JobPayload<Name>;
@@ -89,14 +95,7 @@ export const startWork = async (options: WorkOptions): Promise<{ stop: () => Pro
   };
   for (const name of Object.keys(jobPayloads) as JobName[]) await take(name);
 
-  const waker = await wakeOnNewJobs(
-    databaseUrl,
-    (name) => {
-      const id = workerIds.get(name);
-      if (id) boss.notifyWorker(id);
-    },
-    log,
-  );
+  const waker = await wakeOnNewJobs(databaseUrl, wakeUp, log);
 
   const workerId = randomUUID();
   const giveSign = () =>

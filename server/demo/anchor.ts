@@ -1,7 +1,7 @@
 import { and, eq, getTableColumns, isNotNull, like, max, or, sql, type SQL } from 'drizzle-orm';
 import type { PgColumn } from 'drizzle-orm/pg-core';
 import { daysBetween, localDateIn } from '#shared/plans/calendar.ts';
-import { alertMistakes, alerts, checkIns } from '../db/schema/check-ins.ts';
+import { alerts, checkIns } from '../db/schema/check-ins.ts';
 import { flags } from '../db/schema/flags.ts';
 import { patients } from '../db/schema/patients.ts';
 import { messages, threads } from '../db/schema/threads.ts';
@@ -17,11 +17,7 @@ import { closedClinicNote, closedClinicWords } from './threads.ts';
 const staying: readonly PgColumn[] = [patients.birthDate];
 
 /** Written by the clocks of people's devices, which may be wrong by years: no measure of what is newest. */
-const ofDeviceClocks: readonly PgColumn[] = [
-  checkIns.answeredAt,
-  alerts.answeredAt,
-  alertMistakes.answeredAt,
-];
+const ofDeviceClocks: readonly PgColumn[] = [checkIns.answeredAt, alerts.answeredAt];
 
 type MovingColumn = { key: string; column: PgColumn; kind: 'instant' | 'date' };
 

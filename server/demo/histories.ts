@@ -72,6 +72,7 @@ const rowOf = (
     receivedAt,
     localDate: date,
     clockDoubtful: false,
+    answeredAtDevice: null,
     rulesVersion,
     evaluatedAt: secondsAfter(receivedAt, 0.2 + random.next() / 2),
   };
@@ -96,6 +97,7 @@ const alertOf = (row: CheckInRow, { scripted }: PlannedCheckIn): AlertRow | null
     clockDoubtful,
     rulesVersion,
     evaluatedAt: secondsAfter(receivedAt, 0.3),
+    answeredAtDevice: null,
   };
 };
 

@@ -20,18 +20,17 @@ const streets = [
   'Cobbler Hill',
 ] as const;
 const towns = ['Larkmoor', 'Tansy Hollow', 'Edderwick', 'Upper Sallow'] as const;
-const kin = ['daughter', 'son', 'wife', 'husband', 'sister', 'brother', 'neighbor'] as const;
-const kinNames = [
-  'Amara',
-  'Bas',
-  'Cleo',
-  'Davide',
-  'Enid',
-  'Farah',
-  'Goran',
-  'Hana',
-  'Isidro',
-  'June',
+const relatives = [
+  'Amara (daughter)',
+  'Bas (son)',
+  'Cleo (sister)',
+  'Davide (brother)',
+  'Enid (neighbor)',
+  'Farah (daughter)',
+  'Goran (son)',
+  'Hana (daughter)',
+  'Isidro (neighbor)',
+  'June (sister)',
 ] as const;
 const medicines = [
   'Acetaminophen; metoprolol',
@@ -84,7 +83,7 @@ const safetyFactsOf = (patient: DemoPatient, random: Random, today: LocalDate, c
   emergencyContact:
     patient.name === 'Ines Valcourt'
       ? `Teo Valcourt (husband), 838-555-01${numberOf(patient)}`
-      : `${random.pick(kinNames)} (${random.pick(kin)}), 838-555-01${numberOf(patient)}`,
+      : `${random.pick(relatives)}, 838-555-01${numberOf(patient)}`,
   bloodThinner: patient.bloodThinner,
   allergies: patient.allergies,
   mainMedicines: random.chance(0.85) ? random.pick(medicines) : null,

@@ -5,8 +5,10 @@ import { isPublic, type Route } from './route.ts';
 type Json = Record<string, unknown>;
 
 const schemaOf = (schema: z.ZodType, io: 'input' | 'output'): Json => {
-  const { $schema: _dialect, ...rest } = z.toJSONSchema(schema, { io, target: 'draft-2020-12' }) as Json;
-  return rest;
+  const described = z.toJSONSchema(schema, { io, target: 'draft-2020-12' }) as Json;
+  // The document names the dialect once for all its schemas.
+  delete described.$schema;
+  return described;
 };
 
 /** `/api/threads/:threadId` as OpenAPI writes it: `/api/threads/{threadId}`. */

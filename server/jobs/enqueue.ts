@@ -13,16 +13,17 @@ const writer = new PgBoss({
 
 /**
  * Adds a job to the caller's transaction: it exists if and only if the transaction commits. With a key, a
- * second job under the same key is not added while the first is waiting.
+ * second job under the same key is not added while the first is waiting. Higher priorities are taken first.
  */
 export const enqueue = async <Name extends JobName>(
   tx: Tx,
   name: Name,
   payload: JobPayload<Name>,
-  key?: string,
+  { key, priority }: { key?: string; priority?: number } = {},
 ): Promise<void> => {
   await writer.send(name, payload, {
     ...(key === undefined ? {} : { singletonKey: key }),
+    ...(priority === undefined ? {} : { priority }),
     db: { executeSql: (text, values) => tx.$client.query(text, values) },
   });
   await tx.execute(sql`select pg_notify(${jobChannel}, ${name})`);

@@ -6,6 +6,9 @@ import type { Tx } from '../db/with-tx.ts';
 import { enqueue } from '../jobs/enqueue.ts';
 import type { NotificationKind } from './wording.ts';
 
+/** An emergency's mail goes before whatever else waits. */
+const emergencyPriority = 10;
+
 export type Occasion = {
   kind: NotificationKind;
   /** Ids and numbers only; the same occasion notifies a person once, however often it is reported. */
@@ -38,7 +41,10 @@ export const notify = async (
     )
     .onConflictDoNothing()
     .returning({ id: notifications.id });
-  for (const { id } of written) await enqueue(tx, 'send-notification', { clinicId, notificationId: id }, id);
+  const priority = kind === 'new-emergency' ? emergencyPriority : 0;
+  for (const { id } of written) {
+    await enqueue(tx, 'send-notification', { clinicId, notificationId: id }, { key: id, priority });
+  }
 };
 
 /** What is to be sent and to whom; null when it was sent already or its person has left. */

@@ -37,5 +37,7 @@ export const getWorkerHealth = contract({
     late: z.boolean(),
     /** Check-ins and alerts of this clinic that no rule has seen for over 30 seconds. */
     unevaluated: z.number().int(),
+    /** Mails of this clinic that failed for good, or that wait for over ten minutes. */
+    unsent: z.number().int(),
   }),
 });

@@ -8,7 +8,7 @@ type Values = Finding['values'];
 type Explanation = {
   /** A few words for the queue: "Fall onto the arm; pain 8, usual 3". */
   title: string;
-  /** The answer, the value beside the person's own usual, the day, the rule and its version. */
+  /** The day, the pain beside the person's own usual where the title does not say it, and what the rule looks for. */
   sentence: string;
   source: string;
   ruleVersion: number;
@@ -71,7 +71,7 @@ const woundWords = (values: Values): string => {
     .map((code) => (code === 'not-sure' ? 'not sure' : code));
   const signs = typeof values.signs === 'string' ? values.signs.split(', ') : [];
   const head = signs.includes('pus')
-    ? `Wound fluid, colour ${fluid[0] ?? ''}, thickness ${fluid[1] ?? ''}`
+    ? `Wound fluid, color ${fluid[0] ?? ''}, thickness ${fluid[1] ?? ''}`
     : 'Wound opened';
   const beside = signs.filter(
     (sign) => sign !== 'pus' && !(sign === 'wound-opened' && head === 'Wound opened'),
@@ -125,7 +125,7 @@ const titles: Record<RuleCode, (values: Values) => string> = {
 };
 
 const besideUsual = ({ painNow, usual }: Values): string => {
-  if (typeof painNow !== 'number') return 'Pain now not answered.';
+  if (typeof painNow !== 'number') return '';
   return typeof usual === 'number'
     ? `Pain now ${painNow}, usual ${Math.round(usual)}.`
     : `Pain now ${painNow}, no earlier check-in to compare.`;
@@ -141,7 +141,6 @@ export const explain = (finding: Finding, rules: readonly Rule[] = shippedRules)
       `Day ${String(finding.values.day)}.`,
       title.includes('usual') ? '' : besideUsual(finding.values),
       rule?.clinicianText ?? '',
-      `Rule ${finding.code}, version ${finding.ruleVersion}.`,
     ]
       .filter((part) => part !== '')
       .join(' '),

@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { contract } from '../http/contract.ts';
-import { messageText } from './message-text.ts';
+import { messageText, subjectLine } from './message-text.ts';
 
 const threadParams = z.object({ threadId: z.uuid() });
 
@@ -58,11 +58,7 @@ export const listThreads = contract({
 
 export const postThreadBody = z.strictObject({
   id: z.uuid(),
-  subject: z
-    .string()
-    .trim()
-    .min(1, 'Say in a few words what it is about.')
-    .max(120, 'At most 120 characters.'),
+  subject: subjectLine,
   message: z.strictObject({ id: z.uuid(), text: messageText }),
 });
 

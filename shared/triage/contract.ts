@@ -24,6 +24,8 @@ export const flagRow = z.object({
   raisedAt: z.iso.datetime(),
   claimedBy: personName.nullable(),
   claimedAt: z.iso.datetime().nullable(),
+  /** When the patient said last that a tick behind this flag was a mistake. It stays for a human all the same. */
+  calledMistakeAt: z.iso.datetime().nullable(),
   /** Pain now of the last 14 days, oldest first; null for a day without a check-in. */
   pain14: z.array(z.number().nullable()),
   usualPain: z.number().nullable(),
@@ -44,7 +46,7 @@ export const flagEvent = z.object({
   id: z.uuid(),
   kind: z.enum([
     'raised',
-    'raised-higher',
+    'raised-again',
     'seen',
     'claimed',
     'released',

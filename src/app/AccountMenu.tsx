@@ -1,19 +1,23 @@
 import { useEffect, useId, useRef, useState } from 'react';
-import type { ReactNode } from 'react';
+import type { ReactNode, RefObject } from 'react';
 import { useTranslation } from 'react-i18next';
 import { Avatar } from '#src/components/Avatar.tsx';
 
-type Props = { name: string; children: ReactNode };
+type Props = {
+  name: string;
+  /** The button, for whoever has to give the focus back to it. */
+  buttonRef: RefObject<HTMLButtonElement | null>;
+  children: ReactNode;
+};
 
 /**
  * The account behind the person's initials: a plain disclosure with buttons in it. It is in the first load of
  * Today, which has no room for a menu library.
  */
-export function AccountMenu({ name, children }: Props) {
+export function AccountMenu({ name, buttonRef, children }: Props) {
   const { t } = useTranslation();
   const [open, setOpen] = useState(false);
   const box = useRef<HTMLDivElement>(null);
-  const button = useRef<HTMLButtonElement>(null);
   const panelId = useId();
   useEffect(() => {
     if (!open) return undefined;
@@ -23,7 +27,7 @@ export function AccountMenu({ name, children }: Props) {
     const onKey = (event: KeyboardEvent) => {
       if (event.key !== 'Escape') return;
       setOpen(false);
-      button.current?.focus();
+      buttonRef.current?.focus();
     };
     document.addEventListener('pointerdown', onOutside);
     document.addEventListener('focusin', onOutside);
@@ -33,11 +37,11 @@ export function AccountMenu({ name, children }: Props) {
       document.removeEventListener('focusin', onOutside);
       document.removeEventListener('keydown', onKey);
     };
-  }, [open]);
+  }, [open, buttonRef]);
   return (
-    <div ref={box} className="relative -mr-2">
+    <div ref={box} className="relative -mr-2 shrink-0">
       <button
-        ref={button}
+        ref={buttonRef}
         type="button"
         aria-expanded={open}
         aria-controls={panelId}

@@ -13,7 +13,7 @@ export function CheckTile({ label, detail, ...rest }: Props) {
   const detailId = useId();
   const labelId = useId();
   return (
-    <label className="flex min-h-15 items-center gap-3.5 rounded border border-wire-strong bg-sheet px-3.5 py-2.5 leading-snug hover:bg-leaf-wash has-disabled:bg-transparent has-disabled:text-ink-soft has-checked:border-leaf has-checked:bg-leaf-wash has-checked:ring-1 has-checked:ring-leaf">
+    <label className="flex min-h-13 items-center gap-3.5 rounded border border-wire-strong bg-sheet px-3.5 py-1.5 leading-snug hover:bg-leaf-wash has-disabled:bg-transparent has-disabled:text-ink-soft has-checked:border-leaf has-checked:bg-leaf-wash has-checked:ring-1 has-checked:ring-leaf">
       <CheckMark large>
         <input
           {...rest}

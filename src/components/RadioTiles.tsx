@@ -1,4 +1,5 @@
 import { useId } from 'react';
+import { classNames } from './class-names.ts';
 
 type RadioOption<Value extends string> = { value: Value; label: string; detail?: string };
 
@@ -6,6 +7,8 @@ type Props<Value extends string> = {
   legend: string;
   name?: string;
   options: RadioOption<Value>[];
+  /** Two beside each other, where the screen is wide enough for it. */
+  columns?: 1 | 2;
   value: Value | null;
   onChange: (value: Value) => void;
   error?: string;
@@ -16,6 +19,7 @@ export function RadioTiles<Value extends string>({
   legend,
   name,
   options,
+  columns = 1,
   value,
   onChange,
   error,
@@ -25,7 +29,7 @@ export function RadioTiles<Value extends string>({
   return (
     <fieldset className="min-w-0" aria-describedby={error ? errorId : undefined}>
       <legend className="mb-2 font-bold">{legend}</legend>
-      <div className="grid gap-2">
+      <div className={classNames('grid gap-2', columns === 2 && 'sm:grid-cols-2')}>
         {options.map((option) => (
           <label
             key={option.value}

@@ -15,6 +15,8 @@ export function TextArea({ label, hint, error, id, rows = 3, ...rest }: Props) {
         {...rest}
         id={fieldId}
         rows={rows}
+        // A field that fits its content does not heed `rows`; the rest is its padding and border.
+        style={{ minHeight: `calc(${rows} * 1lh + 1.375rem)` }}
         className={`${fieldClass} field-sizing-content max-h-[60vh] resize-y`}
         aria-describedby={describedBy(fieldId, { hint, error })}
         aria-invalid={error ? true : undefined}

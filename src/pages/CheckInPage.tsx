@@ -1,5 +1,5 @@
 import { useState } from 'react';
-import { useTranslation } from 'react-i18next';
+import { Trans, useTranslation } from 'react-i18next';
 import type { CheckInMode } from '#shared/check-ins/screens.ts';
 import { nextScreen } from '#shared/check-ins/walk.ts';
 import { usePageHeading } from '#src/app/page-heading.ts';
@@ -64,7 +64,12 @@ function Opening({ mode }: { mode: CheckInMode }) {
               href={telephoneHref(me.clinic.onCallNumber)}
               className="font-bold underline underline-offset-4"
             >
-              {t('failed.call', { number: me.clinic.onCallNumber })}
+              <Trans
+                t={t}
+                i18nKey="failed.call"
+                values={{ number: me.clinic.onCallNumber }}
+                components={{ tel: <span className="whitespace-nowrap" /> }}
+              />
             </a>
           </p>
         </>

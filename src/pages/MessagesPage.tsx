@@ -13,7 +13,7 @@ export function MessagesPage() {
   const heading = usePageHeading(t('title'));
   const side = useControlsSide();
   return (
-    <div className="grid gap-5">
+    <div className="grid grid-cols-[minmax(0,1fr)] gap-5">
       <PageHeader title={t('title')} detail={t('detail')} headingRef={heading} />
       <div className={classNames('grid sm:w-80', side === 'right' && 'sm:ml-auto')}>
         <LinkButton to="/messages/new" size="large" block icon={SquarePen}>

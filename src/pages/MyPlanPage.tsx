@@ -22,7 +22,7 @@ export function MyPlanPage() {
   const plan = useMyPlan();
   const { data } = plan;
   return (
-    <div className="grid gap-6">
+    <div className="grid grid-cols-1 gap-6">
       <PageHeader title={t('title')} detail={data ? <Head plan={data} /> : undefined} headingRef={heading} />
       {data ? <Loaded plan={data} /> : null}
       {!data && plan.isError ? (

@@ -65,10 +65,10 @@ function Loaded({ today, nowMs }: { today: Today; nowMs: number }) {
   const me = useMe();
   const side = useControlsSide();
   return (
-    <div className="mt-4 grid gap-8">
+    <div className="mt-4 grid grid-cols-1 gap-8">
       <div
         className={classNames(
-          'grid gap-8 lg:flex lg:items-end lg:justify-between',
+          'grid grid-cols-1 gap-8 lg:flex lg:items-end lg:justify-between',
           side === 'left' && 'lg:flex-row-reverse',
         )}
       >
@@ -80,9 +80,10 @@ function Loaded({ today, nowMs }: { today: Today; nowMs: number }) {
             somethingNew: hasDraft(me, 'something-new', today.date),
           }}
           side={side}
-        />
+        >
+          {today.openFlag ? <FlagLoop flag={today.openFlag} clinic={me.clinic} nowMs={nowMs} /> : null}
+        </CheckInEntry>
       </div>
-      {today.openFlag ? <FlagLoop flag={today.openFlag} clinic={me.clinic} nowMs={nowMs} /> : null}
       <section aria-labelledby="hold-off">
         <SectionHeading id="hold-off" wire>
           {t('holdOff.title')}

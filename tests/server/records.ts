@@ -114,11 +114,12 @@ export const plantFlag = async (
     .values({
       clinicId,
       flagId,
+      sourceId: randomUUID(),
       code: 'fall',
       ruleVersion: 1,
       urgency,
       values: { day: 24, painNow: 3, usual: null, onArm: false, hitHead: false },
-      foundAt: raisedAt,
+      toldAt: raisedAt,
     });
   await db(database)
     .insert(flagEvents)

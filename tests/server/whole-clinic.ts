@@ -53,7 +53,7 @@ export const plantWholeClinic = async (database: TestDatabase): Promise<WholeCli
     alertId: alert.id,
     authorId: patient.personId,
     clientId: randomUUID(),
-    answeredAt: at,
+    answeredAtDevice: at.toISOString(),
     receivedAt: at,
   });
   const { rows } = await database.asSuperuser.query<{ id: string }>(

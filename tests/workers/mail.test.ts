@@ -235,3 +235,19 @@ describe('the worker', () => {
     expect((await desk.call('get', '/api/worker')).body).toMatchObject({ late: false, unevaluated: 0 });
   });
 });
+
+it('sends an emergency’s mail before what was waiting already, and drains the rest without a pause', async () => {
+  const person = { kind: 'system', clinicId } as const;
+  await withTx(database.pools.app, person, async (tx) => {
+    for (let n = 0; n < 40; n += 1) {
+      const occasion = { kind: 'new-message', occasion: `waiting:${n}`, path: '/messages' } as const;
+      await notify(tx, clinicId, [noor.personId], occasion, new Date());
+    }
+    const occasion = { kind: 'new-emergency', occasion: 'emergency', path: '/round' } as const;
+    await notify(tx, clinicId, [noor.personId], occasion, new Date());
+  });
+  await startWorker();
+  // At one mail a second, as the queue polls, forty would take forty seconds.
+  await vi.waitFor(() => expect(mailServer.mails).toHaveLength(41), within);
+  expect(mailServer.mails[0]?.subject).toContain('emergency');
+});

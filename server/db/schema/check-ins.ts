@@ -13,7 +13,10 @@ const answeredColumns = () => ({
   /** Made by the author's device; unique for that author, and never a key of its own. */
   clientId: uuid().notNull(),
   answers: jsonb().$type<Answers>().notNull(),
+  /** When it was answered, by the server's clock where the device's is doubtful. */
   answeredAt: instant().notNull(),
+  /** What the device's clock said, kept where it is doubtful. */
+  answeredAtDevice: text(),
   receivedAt: instant().notNull(),
   /** The patient's local date it is for. */
   localDate: date().notNull(),
@@ -74,7 +77,7 @@ export const alertMistakes = pgTable(
     alertId: uuid().notNull(),
     authorId: uuid().notNull(),
     clientId: uuid().notNull(),
-    answeredAt: instant().notNull(),
+    answeredAtDevice: text().notNull(),
     receivedAt: instant().notNull(),
   },
   (table) => [

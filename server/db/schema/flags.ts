@@ -58,23 +58,26 @@ export const findings = pgTable(
   {
     ...clinicRow(),
     flagId: uuid().notNull(),
+    /** The check-in or alert in which it was found. Nothing that was found is overwritten by what came later. */
+    sourceId: uuid().notNull(),
     code: text({ enum: ruleCodes }).notNull(),
     ruleVersion: integer().notNull(),
     urgency: text({ enum: urgencies }).notNull(),
     /** The values that made the rule fire, among them the day and the person's own usual. */
     values: jsonb().$type<Finding['values']>().notNull(),
-    foundAt: instant().notNull(),
+    /** When the check-in or alert was received that told it. */
+    toldAt: instant().notNull(),
   },
   (table) => [
     clinicKey(table),
-    unique('findings_once').on(table.clinicId, table.flagId, table.code),
+    unique('findings_once').on(table.clinicId, table.flagId, table.sourceId, table.code),
     foreignKey({ columns: [table.clinicId, table.flagId], foreignColumns: [flags.clinicId, flags.id] }),
   ],
 );
 
 export const flagEventKinds = [
   'raised',
-  'raised-higher',
+  'raised-again',
   'seen',
   'claimed',
   'released',
@@ -104,8 +107,9 @@ export const flagEvents = pgTable(
     uniqueIndex('flag_events_raised_once')
       .on(table.clinicId, table.flagId)
       .where(sql`kind = 'raised'`),
+    // Once per person and raising: the detail of a look is the raising that it saw.
     uniqueIndex('flag_events_seen_once')
-      .on(table.clinicId, table.flagId, table.byPersonId)
+      .on(table.clinicId, table.flagId, table.byPersonId, table.detail)
       .where(sql`kind = 'seen'`),
     // A repeated reply is the same event; the detail of a reply is its message.
     uniqueIndex('flag_events_replied_once')

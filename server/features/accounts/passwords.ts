@@ -1,4 +1,5 @@
 import { hash, verify } from '@node-rs/argon2';
+import { Problem } from '#shared/problems/problems.ts';
 
 /**
  * Argon2id at OWASP's first recommended setting (19 MiB, 2 passes, 1 lane; Password Storage Cheat Sheet).
@@ -17,9 +18,12 @@ const unknownAccountHash = hashPassword(crypto.randomUUID());
 let running = 0;
 const waiting: (() => void)[] = [];
 const atOnce = 2;
+/** A longer line than this would make everybody wait for whoever made it. */
+const longestLine = 50;
 
 /** Exactly one verification, whether or not the account exists; two at a time at most, the rest in line. */
 export const verifyPassword = async (known: string | null, password: string): Promise<boolean> => {
+  if (waiting.length >= longestLine) throw new Problem('unavailable');
   if (running >= atOnce) await new Promise<void>((resolve) => waiting.push(resolve));
   running += 1;
   try {

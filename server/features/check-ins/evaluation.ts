@@ -5,7 +5,8 @@ import type { SystemActor } from '../../db/actor.ts';
 import { alertMistakes, alerts, checkIns } from '../../db/schema/check-ins.ts';
 import type { Tx } from '../../db/with-tx.ts';
 import { chartOf } from '../plans/queries.ts';
-import { noteMistake, raiseFlag } from '../triage/service.ts';
+import { raiseFlag, type FlagSource } from '../triage/raising.ts';
+import { noteMistake } from '../triage/service.ts';
 import { ruleContext } from './context.ts';
 import { historyBefore, type AlertRow, type CheckInRow } from './queries.ts';
 
@@ -21,10 +22,12 @@ const findingsOf = async (tx: Tx, row: Answered, now: Date) => {
   });
 };
 
-const sourceOf = (row: Answered) => ({
+const sourceOf = (row: Answered): FlagSource => ({
+  kind: 'checkInClientId' in row ? 'alert' : 'check-in',
+  id: row.id,
   patientId: row.patientId,
-  sourceAuthorId: row.authorId,
-  sourceClientId: 'checkInClientId' in row ? row.checkInClientId : row.clientId,
+  authorId: row.authorId,
+  checkInClientId: 'checkInClientId' in row ? row.checkInClientId : row.clientId,
   receivedAt: row.receivedAt,
 });
 

@@ -5,7 +5,7 @@ import { localDateIn } from '#shared/plans/calendar.ts';
 import { Problem } from '#shared/problems/problems.ts';
 import type { PersonActor } from '../../db/actor.ts';
 import { alertMistakes, alerts, checkIns } from '../../db/schema/check-ins.ts';
-import { patients } from '../../db/schema/patients.ts';
+import { operationCards, patients } from '../../db/schema/patients.ts';
 import type { Tx } from '../../db/with-tx.ts';
 import { enqueue } from '../../jobs/enqueue.ts';
 import { announce } from '../../realtime/announce.ts';
@@ -14,10 +14,14 @@ import { firstSeenOf, noteMistake } from '../triage/service.ts';
 import { alertOf, ownCheckIn, type AlertRow, type CheckInRow } from './queries.ts';
 
 const clockToleranceMs = 5 * 60_000;
+const dayMs = 24 * 60 * 60_000;
+/** Nothing that waits on a device waits longer; an older answer is a clock that was set back. */
+const oldestAnswerMs = 7 * dayMs;
 
 /**
- * Which local date the answers are for. A device's clock never refuses a check-in: where it disagrees with the
- * server's by more than five minutes, the server's date is taken and the row is marked.
+ * When the answers were given, and which local date they are for. A device's clock never refuses a check-in:
+ * where it disagrees with the server's by more than five minutes, or names a time that cannot be, the row is
+ * marked, the server's date is taken, and the time is corrected by the disagreement. What the device said is kept.
  */
 const datedAnswers = async (
   tx: Tx,
@@ -27,18 +31,37 @@ const datedAnswers = async (
   now: Date,
 ) => {
   const rows = await tx
-    .select({ timeZone: patients.timeZone })
+    .select({ timeZone: patients.timeZone, surgeryDate: operationCards.surgeryDate })
     .from(patients)
+    .innerJoin(
+      operationCards,
+      and(eq(operationCards.clinicId, patients.clinicId), eq(operationCards.patientId, patients.id)),
+    )
     .where(and(eq(patients.clinicId, actor.clinicId), eq(patients.id, patientId)));
-  const timeZone = rows[0]?.timeZone;
-  if (!timeZone) throw new Error('A patient without a record.');
-  const skewMs = Math.abs(Date.parse(sentAt) - now.getTime());
-  const answered = new Date(answeredAt);
-  const clockDoubtful = skewMs > clockToleranceMs || answered.getTime() > now.getTime() + clockToleranceMs;
+  const patient = rows[0];
+  if (!patient) throw new Error('A patient without a record.');
+  const nowMs = now.getTime();
+  const behindMs = nowMs - Date.parse(sentAt);
+  const canBe = (ms: number) =>
+    ms <= nowMs + clockToleranceMs &&
+    ms >= nowMs - oldestAnswerMs &&
+    localDateIn(patient.timeZone, new Date(ms)) >= patient.surgeryDate;
+  const answeredMs = Date.parse(answeredAt);
+  if (Math.abs(behindMs) <= clockToleranceMs && canBe(answeredMs)) {
+    const answered = new Date(answeredMs);
+    return {
+      answeredAt: answered,
+      answeredAtDevice: null,
+      clockDoubtful: false,
+      localDate: localDateIn(patient.timeZone, answered),
+    };
+  }
+  const correctedMs = Math.min(nowMs, answeredMs + behindMs);
   return {
-    answeredAt: answered,
-    clockDoubtful,
-    localDate: localDateIn(timeZone, clockDoubtful ? now : answered),
+    answeredAt: canBe(correctedMs) ? new Date(correctedMs) : now,
+    answeredAtDevice: answeredAt,
+    clockDoubtful: true,
+    localDate: localDateIn(patient.timeZone, now),
   };
 };
 
@@ -86,7 +109,12 @@ export const submitCheckIn = async (
     }
     return receiptOf(earlier);
   }
-  await enqueue(tx, 'evaluate-check-in', { clinicId: actor.clinicId, checkInId: written.id }, written.id);
+  await enqueue(
+    tx,
+    'evaluate-check-in',
+    { clinicId: actor.clinicId, checkInId: written.id },
+    { key: written.id },
+  );
   await writeAudit(tx, actor, { action: 'check-in.sent', subjectId: written.id, patientId }, now);
   await announce(tx, { person: actor.personId }, { topic: 'today' });
   return receiptOf(written);
@@ -130,7 +158,7 @@ export const submitAlert = async (
     }
     return alertReceiptOf(tx, earlier);
   }
-  await enqueue(tx, 'evaluate-alert', { clinicId: actor.clinicId, alertId: written.id }, written.id);
+  await enqueue(tx, 'evaluate-alert', { clinicId: actor.clinicId, alertId: written.id }, { key: written.id });
   await writeAudit(tx, actor, { action: 'alert.sent', subjectId: written.id, patientId }, now);
   return alertReceiptOf(tx, written);
 };
@@ -149,7 +177,7 @@ export const submitMistake = async (
   const author = { clinicId: actor.clinicId, authorId: actor.personId, clientId: input.id };
   const rows = await tx
     .insert(alertMistakes)
-    .values({ ...author, alertId: alert.id, answeredAt: new Date(input.answeredAt), receivedAt: now })
+    .values({ ...author, alertId: alert.id, answeredAtDevice: input.answeredAt, receivedAt: now })
     .onConflictDoNothing()
     .returning();
   const written = rows[0];

@@ -1,8 +1,11 @@
 import { getSignInPage, getWorkerHealth } from '#shared/clinic/contract.ts';
 import { withTx } from '../../db/with-tx.ts';
 import { route } from '../../http/route.ts';
-import { clinicOf, countUnevaluated, findOnlyClinicId } from './queries.ts';
+import { clinicOf, countUnevaluated, countUnsent, findOnlyClinicId } from './queries.ts';
 import { workerHealth, workerLateAfterMs } from './worker-health.ts';
+
+/** A mail that waits for longer than this is told on every clinic screen. */
+const mailLateAfterMs = 10 * 60_000;
 
 export const clinicRoutes = (lastBeat: () => Promise<Date | null>) => [
   route(getSignInPage, {
@@ -22,6 +25,7 @@ export const clinicRoutes = (lastBeat: () => Promise<Date | null>) => [
     handler: async ({ tx, actor, now }) => ({
       ...workerHealth(await lastBeat(), now),
       unevaluated: await countUnevaluated(tx, actor.clinicId, new Date(now.getTime() - workerLateAfterMs)),
+      unsent: await countUnsent(tx, actor.clinicId, new Date(now.getTime() - mailLateAfterMs)),
     }),
   }),
 ];

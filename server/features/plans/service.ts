@@ -1,4 +1,5 @@
-import { and, desc, eq, inArray, ne } from 'drizzle-orm';
+import { and, asc, eq, ne } from 'drizzle-orm';
+import { alias } from 'drizzle-orm/pg-core';
 import type { MyPlan, Today } from '#shared/plans/contract.ts';
 import { daysBetween, localDateIn } from '#shared/plans/calendar.ts';
 import type { PlanExercise } from '#shared/plans/plan.ts';
@@ -6,6 +7,7 @@ import type { Standing } from '#shared/plans/standing.ts';
 import { trellisFrom } from '#shared/plans/trellis.ts';
 import { Problem } from '#shared/problems/problems.ts';
 import { pausesExercises } from '#shared/red-flags/evaluate.ts';
+import { compareUrgency, type Urgency } from '#shared/red-flags/findings.ts';
 import type { PersonActor } from '../../db/actor.ts';
 import { flagEvents, flags } from '../../db/schema/flags.ts';
 import { people } from '../../db/schema/people.ts';
@@ -31,36 +33,56 @@ const exerciseLines = (exercises: readonly PlanExercise[]): Today['exercises'] =
     sessionsPerDay,
   }));
 
-/** The newest flag that no clinician has closed, as far as its patient is told: who has read it, and when. */
+type OpenFlag = NonNullable<Today['openFlag']> & { urgency: Urgency };
+
+/**
+ * The open flag that the patient is told of: one that nobody has read since it was last raised before those that
+ * somebody has, then the most urgent, then the newest. So "read" is never said while something is unread.
+ */
 const openFlagOf = async (tx: Tx, clinicId: string, patientId: string): Promise<Today['openFlag']> => {
+  const claimer = alias(people, 'claimer');
   const rows = await tx
-    .select({ id: flags.id, raisedAt: flags.raisedAt, claimedBy: people.name })
+    .select({
+      id: flags.id,
+      urgency: flags.urgency,
+      raisedAt: flags.raisedAt,
+      claimedBy: claimer.name,
+      kind: flagEvents.kind,
+      at: flagEvents.at,
+      by: people.name,
+    })
     .from(flags)
-    .leftJoin(people, and(eq(people.clinicId, flags.clinicId), eq(people.id, flags.claimedBy)))
+    .innerJoin(flagEvents, and(eq(flagEvents.clinicId, flags.clinicId), eq(flagEvents.flagId, flags.id)))
+    .leftJoin(people, and(eq(people.clinicId, flagEvents.clinicId), eq(people.id, flagEvents.byPersonId)))
+    .leftJoin(claimer, and(eq(claimer.clinicId, flags.clinicId), eq(claimer.id, flags.claimedBy)))
     .where(and(eq(flags.clinicId, clinicId), eq(flags.patientId, patientId), ne(flags.state, 'closed')))
-    .orderBy(desc(flags.raisedAt))
-    .limit(1);
-  const flag = rows[0];
-  if (!flag) return null;
-  const seen = await tx
-    .select({ by: people.name, at: flagEvents.at })
-    .from(flagEvents)
-    .innerJoin(people, and(eq(people.clinicId, flagEvents.clinicId), eq(people.id, flagEvents.byPersonId)))
-    .where(
-      and(
-        eq(flagEvents.clinicId, clinicId),
-        eq(flagEvents.flagId, flag.id),
-        inArray(flagEvents.kind, ['seen', 'claimed']),
-      ),
-    )
-    .orderBy(flagEvents.at)
-    .limit(1);
-  return {
-    raisedAt: flag.raisedAt.toISOString(),
-    seenBy: seen[0]?.by ?? null,
-    seenAt: seen[0]?.at.toISOString() ?? null,
-    claimedBy: flag.claimedBy,
-  };
+    .orderBy(asc(flagEvents.at));
+  const ids = [...new Set(rows.map(({ id }) => id))];
+  const told = ids.flatMap((flagId): OpenFlag[] => {
+    const events = rows.filter(({ id }) => id === flagId);
+    const [first] = events;
+    if (!first) return [];
+    const raised = events.findLast(({ kind }) => kind === 'raised' || kind === 'raised-again');
+    const look = events.find(
+      ({ kind, at }) => (kind === 'seen' || kind === 'claimed') && (!raised || at >= raised.at),
+    );
+    return [
+      {
+        urgency: first.urgency,
+        raisedAt: first.raisedAt.toISOString(),
+        seenBy: look?.by ?? null,
+        seenAt: look?.at.toISOString() ?? null,
+        claimedBy: first.claimedBy,
+      },
+    ];
+  });
+  const [foremost] = told.sort(
+    (a, b) =>
+      Number(a.seenAt !== null) - Number(b.seenAt !== null) ||
+      compareUrgency(a.urgency, b.urgency) ||
+      b.raisedAt.localeCompare(a.raisedAt),
+  );
+  return foremost ?? null;
 };
 
 /** The patient's own Today. */

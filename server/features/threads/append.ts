@@ -9,6 +9,7 @@ import { notify } from '../../notifications/service.ts';
 import { announce } from '../../realtime/announce.ts';
 import { writeAudit, type AuditFact } from '../audit/service.ts';
 import { clinicOf } from '../clinic/queries.ts';
+import { peopleToTell } from '../triage/people-to-tell.ts';
 import {
   lockThread,
   messageByClientId,
@@ -186,5 +187,11 @@ const receiversOf = async (
   const patient = participants.find(({ side }) => side === 'patient');
   if (!patient) throw new Error('A thread without its patient.');
   const team = watchers.filter(({ isTeam, personId }) => isTeam && personId !== patient.personId);
-  return [patient.personId, team.map(({ personId }) => personId)];
+  // A question must not be nobody's: without a care team it goes to whoever would be told of a flag.
+  const { clinicId, patientId } = thread;
+  const teamIds =
+    team.length > 0
+      ? team.map(({ personId }) => personId)
+      : await peopleToTell(tx, { clinicId, patientId, withOnCall: true });
+  return [patient.personId, teamIds];
 };

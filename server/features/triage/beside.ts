@@ -32,7 +32,7 @@ const plainQuestions: [keyof Answers, string][] = [
   ['faintedWhen', 'Fainting or blood, when'],
   ['popSigns', 'After the pop or slip'],
   ['fallSigns', 'The fall'],
-  ['woundColour', 'Colour of the fluid'],
+  ['woundColour', 'Color of the fluid'],
   ['woundThickness', 'Thickness of the fluid'],
   ['woundSigns', 'The wound'],
   ['shaking', 'Shaking chills'],
@@ -52,9 +52,10 @@ const numberRow = (
   today: number | undefined,
   usual: number | null,
   days14: Row['days14'],
+  unanswered: string,
 ): Row => ({
   label,
-  today: today === undefined ? 'not answered' : String(today),
+  today: today === undefined ? unanswered : String(today),
   usual: usual === null ? null : String(Math.round(usual)),
   days14,
 });
@@ -65,9 +66,12 @@ export const besideUsual = (
   usual: { painNow: number | null; painWorst: number | null },
   days14: { painNow: (number | null)[]; painWorst: (number | null)[] },
 ): Row[] => {
+  // What is sent as something new between two check-ins begins after the questions about pain.
+  const unanswered =
+    answers.painNow === undefined && answers.painWorst === undefined ? 'not asked' : 'not answered';
   const rows: Row[] = [
-    numberRow('Pain now', answers.painNow, usual.painNow, days14.painNow),
-    numberRow('Pain at worst', answers.painWorst, usual.painWorst, days14.painWorst),
+    numberRow('Pain now', answers.painNow, usual.painNow, days14.painNow, unanswered),
+    numberRow('Pain at worst', answers.painWorst, usual.painWorst, days14.painWorst, unanswered),
   ];
   const add = (label: string, today: string | null) => {
     if (today !== null) rows.push({ label, today, usual: null, days14: null });

@@ -2,6 +2,7 @@ import { and, asc, desc, eq, gte, inArray, lte, ne, sql } from 'drizzle-orm';
 import { alias } from 'drizzle-orm/pg-core';
 import { Problem } from '#shared/problems/problems.ts';
 import type { Finding } from '#shared/red-flags/findings.ts';
+import { standingFindings } from '#shared/red-flags/told.ts';
 import type { PersonActor } from '../../db/actor.ts';
 import { alerts, checkIns } from '../../db/schema/check-ins.ts';
 import { findings, flagEventKinds, flagEvents, flags } from '../../db/schema/flags.ts';
@@ -38,6 +39,9 @@ const selectRows = (tx: Tx) =>
       procedure: operationCards.procedure,
       surgeryDate: operationCards.surgeryDate,
       claimedByName: claimer.name,
+      calledMistakeAt: sql<string | null>`(
+        select to_char(max(e.at) at time zone 'UTC', 'YYYY-MM-DD"T"HH24:MI:SS.MS"Z"') from flag_events e
+        where e.clinic_id = ${flags.clinicId} and e.flag_id = ${flags.id} and e.kind = 'ticked-by-mistake')`,
     })
     .from(flags)
     .innerJoin(patients, and(eq(patients.clinicId, flags.clinicId), eq(patients.id, flags.patientId)))
@@ -67,7 +71,7 @@ export const rowOf = async (tx: Tx, clinicId: string, flagId: string): Promise<R
   return row;
 };
 
-/** The findings of several flags at once. */
+/** What stands of the findings of several flags at once. */
 export const findingsOfFlags = async (
   tx: Tx,
   clinicId: string,
@@ -78,10 +82,12 @@ export const findingsOfFlags = async (
   const rows = await tx
     .select()
     .from(findings)
-    .where(and(eq(findings.clinicId, clinicId), inArray(findings.flagId, [...flagIds])));
+    .where(and(eq(findings.clinicId, clinicId), inArray(findings.flagId, [...flagIds])))
+    .orderBy(asc(findings.toldAt), asc(findings.id));
   for (const { flagId, code, ruleVersion, urgency, values } of rows) {
     byFlag.set(flagId, [...(byFlag.get(flagId) ?? []), { code, ruleVersion, urgency, values }]);
   }
+  for (const [flagId, found] of byFlag) byFlag.set(flagId, standingFindings(found));
   return byFlag;
 };
 
@@ -212,27 +218,4 @@ export const nameOf = async (tx: Tx, clinicId: string, personId: string): Promis
     .from(people)
     .where(and(eq(people.clinicId, clinicId), eq(people.id, personId)));
   return rows[0]?.name ?? 'a colleague';
-};
-
-/** The first clinician who had the flag of an answer on the screen, as recorded. */
-export const firstSeenEvent = async (
-  tx: Tx,
-  source: { clinicId: string; authorId: string; checkInClientId: string },
-): Promise<{ by: string; at: Date } | null> => {
-  const rows = await tx
-    .select({ by: people.name, at: flagEvents.at })
-    .from(flagEvents)
-    .innerJoin(flags, and(eq(flags.clinicId, flagEvents.clinicId), eq(flags.id, flagEvents.flagId)))
-    .innerJoin(people, and(eq(people.clinicId, flagEvents.clinicId), eq(people.id, flagEvents.byPersonId)))
-    .where(
-      and(
-        eq(flags.clinicId, source.clinicId),
-        eq(flags.sourceAuthorId, source.authorId),
-        eq(flags.sourceClientId, source.checkInClientId),
-        inArray(flagEvents.kind, ['seen', 'claimed']),
-      ),
-    )
-    .orderBy(asc(flagEvents.at))
-    .limit(1);
-  return rows[0] ?? null;
 };

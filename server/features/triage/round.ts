@@ -67,6 +67,7 @@ const toRow = (row: RoundRow, { found, pain, date }: RowFacts): FlagRow => {
     claimedBy:
       flag.claimedBy && row.claimedByName ? { personId: flag.claimedBy, name: row.claimedByName } : null,
     claimedAt: flag.claimedAt?.toISOString() ?? null,
+    calledMistakeAt: row.calledMistakeAt,
     pain14: byDay(
       pain.map(({ localDate, painNow }) => ({ localDate, value: painNow })),
       date,

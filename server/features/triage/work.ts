@@ -9,6 +9,7 @@ import { flags } from '../../db/schema/flags.ts';
 import type { Tx } from '../../db/with-tx.ts';
 import { writeAudit } from '../audit/service.ts';
 import { replyAboutFlag } from '../threads/starting.ts';
+import { newestRaisingOf } from './looks.ts';
 import { flagVisibleTo, nameOf, patientPersonOf, type FlagRecord } from './queries.ts';
 import { flagRowOf } from './round.ts';
 import { addFlagEvent, announceAlerts, announceFlag } from './service.ts';
@@ -124,10 +125,11 @@ export const close = async (
   return flagRowOf(tx, actor, flagId, now);
 };
 
-/** This clinician has the case on the screen. Recorded once per person; the patient is told who. */
+/** This clinician has the case on the screen. Recorded once per person and raising; the patient is told who. */
 export const see = async (tx: Tx, actor: PersonActor, flagId: string, now: Date): Promise<void> => {
   const flag = await flagVisibleTo(tx, actor, flagId);
-  const isFirstTime = await addFlagEvent(tx, flag, { kind: 'seen', byPersonId: actor.personId }, now);
+  const detail = await newestRaisingOf(tx, flag);
+  const isFirstTime = await addFlagEvent(tx, flag, { kind: 'seen', byPersonId: actor.personId, detail }, now);
   await writeAudit(tx, actor, { action: 'flag.seen', subjectId: flag.id, patientId: flag.patientId }, now);
   if (!isFirstTime) return;
   await announceFlag(tx, flag);

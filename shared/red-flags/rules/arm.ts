@@ -174,7 +174,7 @@ const clotArm = defineRule({
     'Clots after shoulder arthroplasty, Diagnostics 2023;13:636: 0.8 %. CDC, signs of venous thromboembolism. What counts as a rise is a default of ours.',
   mark: 'published',
   clinicianText:
-    'Whole arm and hand swollen with tightness, colour change or a rise: pain up 2 or more on the usual after day 3, or swelling much more after the first week.',
+    'Whole arm and hand swollen with tightness, color change or a rise: pain up 2 or more on the usual after day 3, or swelling much more after the first week.',
   callSheet: [
     yesNo('Swollen from shoulder to hand?'),
     yesNo('Tight, blue, red or purple?'),

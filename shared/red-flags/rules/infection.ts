@@ -118,9 +118,9 @@ const woundPus = defineRule({
   pause: null,
   grades: ['wound-fluid', 'wet-dressing', 'wound-opened'],
   source:
-    'CDC NHSN, surgical site infection criteria: coloured and thick (milky, creamy, opaque, viscous). They count cases; here they prompt a call. Cloudy as a colour is a default of ours.',
+    'CDC NHSN, surgical site infection criteria: colored and thick (milky, creamy, opaque, viscous). They count cases; here they prompt a call. Cloudy as a color is a default of ours.',
   mark: 'published',
-  clinicianText: 'Fluid that is coloured and thick, the published sign of pus, or the wound has opened.',
+  clinicianText: 'Fluid that is colored and thick, the published sign of pus, or the wound has opened.',
   callSheet: [
     inWords('Where on the wound, and how much?'),
     yesNo('Has the wound opened?'),

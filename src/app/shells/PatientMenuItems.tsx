@@ -1,42 +1,34 @@
 import { ArrowLeftRight, LogOut } from 'lucide-react';
 import type { LucideIcon } from 'lucide-react';
-import { lazy, Suspense, useState } from 'react';
 import { useTranslation } from 'react-i18next';
 import { hasUnsent } from '#src/features/check-ins/kept.ts';
 import { chooseSide, useControlsSide } from '../free-hand.ts';
 import { useMe } from '../session.tsx';
 import { useSignOut } from '../sign-out.ts';
 
-const UnsentDialog = lazy(async () => ({ default: (await import('./UnsentDialog.tsx')).UnsentDialog }));
+type Props = {
+  /** A sign-out would lose something that is not sent. */
+  onAsk: () => void;
+};
 
-/** The side of the controls and the way out, which asks first where something is not sent. */
-export function PatientMenuItems() {
+/** The side of the controls and the way out. */
+export function PatientMenuItems({ onAsk }: Props) {
   const { t } = useTranslation();
   const me = useMe();
+  const signOut = useSignOut();
   const side = useControlsSide();
   const other = side === 'left' ? 'right' : 'left';
-  const signOut = useSignOut();
-  const [asking, setAsking] = useState(false);
   return (
     <>
       <MenuButton icon={ArrowLeftRight} onClick={() => chooseSide(me.personId, other)}>
         {t(other === 'left' ? 'account.controlsLeft' : 'account.controlsRight')}
       </MenuButton>
-      <MenuButton icon={LogOut} onClick={() => (hasUnsent(me) ? setAsking(true) : signOut.mutate())}>
+      <MenuButton icon={LogOut} onClick={() => (hasUnsent(me) ? onAsk() : signOut.mutate())}>
         {t('account.signOut')}
       </MenuButton>
       <p role="alert" className="max-w-64 px-3 text-sm font-bold text-clay empty:hidden">
         {signOut.isError ? t('signingOut.failed') : null}
       </p>
-      {asking ? (
-        <Suspense>
-          <UnsentDialog
-            busy={signOut.isPending}
-            onStay={() => setAsking(false)}
-            onDiscard={() => signOut.mutate()}
-          />
-        </Suspense>
-      ) : null}
     </>
   );
 }

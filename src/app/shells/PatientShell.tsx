@@ -36,12 +36,14 @@ export function PatientShell() {
     <div className="base-large flex min-h-dvh flex-col">
       <SkipLink targetId={mainId} label={t('skip')} />
       <header className="mx-auto flex w-full max-w-5xl items-center justify-between gap-3 px-5 pt-3 print:hidden">
-        <Link to="/today" className="inline-flex min-h-target min-w-0 items-center">
-          <Mark />
-        </Link>
+        <div className="@container min-w-0 grow">
+          <Link to="/today" className="inline-flex min-h-target items-center">
+            <Mark />
+          </Link>
+        </div>
         <PatientMenu />
       </header>
-      <div className="mx-auto grid w-full max-w-5xl grow content-start lg:grid-cols-[13rem_minmax(0,1fr)]">
+      <div className="mx-auto grid w-full max-w-5xl grow grid-cols-1 content-start lg:grid-cols-[13rem_minmax(0,1fr)]">
         <SideNavigation label={t('places')} items={places} />
         <main id={mainId} tabIndex={-1} className="w-full max-w-3xl min-w-0 px-5 pt-3 pb-10">
           <Outlet />

@@ -1,11 +1,13 @@
 import { useTranslation } from 'react-i18next';
 import { AlertDialog } from '#src/components/AlertDialog.tsx';
+import { useSignOut } from '../sign-out.ts';
 
-type Props = { busy: boolean; onStay: () => void; onDiscard: () => void };
+type Props = { onStay: () => void };
 
 /** Before a sign-out that would lose a check-in that is not sent. */
-export function UnsentDialog({ busy, onStay, onDiscard }: Props) {
+export function UnsentDialog({ onStay }: Props) {
   const { t } = useTranslation();
+  const signOut = useSignOut();
   return (
     <AlertDialog
       open
@@ -13,13 +15,20 @@ export function UnsentDialog({ busy, onStay, onDiscard }: Props) {
         if (!open) onStay();
       }}
       title={t('signingOut.unsent.title')}
-      description={t('signingOut.unsent.body')}
+      description={
+        <>
+          <p>{t('signingOut.unsent.body')}</p>
+          <p role="alert" className="mt-2 font-bold text-clay empty:hidden">
+            {signOut.isError ? t('signingOut.failed') : null}
+          </p>
+        </>
+      }
       cancelLabel={t('signingOut.unsent.stay')}
       confirm={{
         label: t('signingOut.unsent.discard'),
-        onConfirm: onDiscard,
+        onConfirm: () => signOut.mutate(),
         danger: true,
-        busy,
+        busy: signOut.isPending,
       }}
     />
   );

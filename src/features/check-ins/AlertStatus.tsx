@@ -3,6 +3,7 @@ import { useTranslation } from 'react-i18next';
 import { LinkButton } from '#src/components/LinkButton.tsx';
 import { useNowMs } from '#src/lib/now.ts';
 import { formatMoment, telephoneHref } from '#src/lib/format.ts';
+import { isReceived } from './alert-outbox.ts';
 import type { OutgoingAlert } from './alert-outbox.ts';
 import { useAlertReceipt } from './queries.ts';
 
@@ -15,7 +16,7 @@ type Props = { entry: OutgoingAlert | undefined; alertId: string; onCallNumber: 
 export function AlertStatus({ entry, alertId, onCallNumber }: Props) {
   const { t } = useTranslation('check-in-screens');
   const nowMs = useNowMs(1_000);
-  const received = entry === undefined || entry.receipt !== null;
+  const received = entry === undefined || isReceived(entry);
   const latest = useAlertReceipt(alertId, received);
   const receipt = latest.data ?? entry?.receipt ?? null;
   const late = receipt === null && entry !== undefined && nowMs - entry.tickedAtMs >= patienceMs;
@@ -47,7 +48,7 @@ export function AlertStatus({ entry, alertId, onCallNumber }: Props) {
         <div role="alert" className="grid gap-2">
           <p className="font-bold">{t('clinic.callInstead')}</p>
           <LinkButton href={telephoneHref(onCallNumber)} variant="danger" size="large" block>
-            <span className="text-2xl tabular-nums">{onCallNumber}</span>
+            <span className="text-2xl whitespace-nowrap tabular-nums">{onCallNumber}</span>
           </LinkButton>
         </div>
       ) : null}

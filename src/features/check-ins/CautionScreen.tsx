@@ -2,11 +2,14 @@ import { HeartHandshake } from 'lucide-react';
 import { useEffect, useRef } from 'react';
 import { useTranslation } from 'react-i18next';
 import type { ClinicCard } from '#shared/clinic/contract.ts';
+import type { CheckInMode } from '#shared/check-ins/screens.ts';
 import type { Finding } from '#shared/red-flags/findings.ts';
 import { useHoldScreen } from '#src/app/caution-hold.ts';
+import { isClosed } from '#src/app/clinic-hours.ts';
 import { Button } from '#src/components/Button.tsx';
 import { SignShape } from '#src/components/SignShape.tsx';
 import { classNames } from '#src/components/class-names.ts';
+import { useNowMs } from '#src/lib/now.ts';
 import type { OutgoingAlert } from './alert-outbox.ts';
 import { AlertStatus } from './AlertStatus.tsx';
 import { CautionCalls, lookOf } from './CautionCalls.tsx';
@@ -17,6 +20,7 @@ type Props = {
   /** The serious findings, the most urgent first; at least one. */
   findings: readonly Finding[];
   clinic: ClinicCard;
+  mode: CheckInMode;
   alertId: string;
   entry: OutgoingAlert | undefined;
   onMistake: () => void;
@@ -33,7 +37,8 @@ const grounds: Record<CautionLook, string> = {
  * The whole screen, at once, from what is on the device: whom to call, what was told, what to do meanwhile, and
  * what the clinic knows so far.
  */
-export function CautionScreen({ findings, clinic, alertId, entry, onMistake, onGoOn }: Props) {
+export function CautionScreen(props: Props) {
+  const { findings, clinic, mode, alertId, entry, onMistake, onGoOn } = props;
   const { t } = useTranslation(['check-in-screens', 'rules']);
   const heading = useRef<HTMLHeadingElement>(null);
   useHoldScreen(true);
@@ -42,10 +47,11 @@ export function CautionScreen({ findings, clinic, alertId, entry, onMistake, onG
     heading.current?.focus();
   }, []);
   const look = lookOf(findings);
-  const words = findingWords(t, findings, clinic);
+  const nowMs = useNowMs();
+  const words = findingWords(t, findings, clinic, isClosed(clinic, nowMs));
   return (
     <div className={classNames('base-large min-h-dvh', grounds[look])}>
-      <main className="mx-auto grid w-full max-w-xl gap-5 px-5 py-8">
+      <main className="mx-auto grid w-full max-w-xl grid-cols-1 gap-5 px-5 py-8">
         {look === 'crisis' ? (
           <HeartHandshake className="size-16 text-slate" strokeWidth={1.5} aria-hidden />
         ) : (
@@ -71,7 +77,7 @@ export function CautionScreen({ findings, clinic, alertId, entry, onMistake, onG
         {look === 'urgent' ? <p>{words.next[0]}</p> : null}
         <div className="grid justify-items-start gap-2">
           <Button variant="outline" onClick={onGoOn}>
-            {t('caution.goOn')}
+            {t(`caution.goOn.${mode}`)}
           </Button>
           <button
             type="button"

@@ -1,4 +1,5 @@
 import { ClipboardCheck, MessageCircleMore } from 'lucide-react';
+import type { ReactNode } from 'react';
 import { useTranslation } from 'react-i18next';
 import { LinkButton } from '#src/components/LinkButton.tsx';
 import { classNames } from '#src/components/class-names.ts';
@@ -10,15 +11,17 @@ type Props = {
   /** What is begun and not sent. */
   begun: { checkIn: boolean; somethingNew: boolean };
   side: 'left' | 'right';
+  /** What became of what was told before stands ahead of telling more. */
+  children?: ReactNode;
 };
 
 /** The way into the check-in, and at any hour into the symptom part alone. */
-export function CheckInEntry({ doneAt, begun, side }: Props) {
+export function CheckInEntry({ doneAt, begun, side, children }: Props) {
   const { t } = useTranslation('today');
   // On a phone the buttons are as wide as the screen; where they are not, they stand on the free hand's side.
-  const place = classNames('grid sm:max-lg:w-80', side === 'right' && 'sm:max-lg:ml-auto');
+  const place = classNames('grid grid-cols-1 sm:max-lg:w-80', side === 'right' && 'sm:max-lg:ml-auto');
   return (
-    <div className="grid gap-3 lg:w-70 lg:shrink-0">
+    <div className="grid grid-cols-1 gap-3 lg:w-70 lg:shrink-0">
       {doneAt === null ? (
         <div className={place}>
           <LinkButton to="/check-in" size="large" block icon={ClipboardCheck}>
@@ -34,6 +37,7 @@ export function CheckInEntry({ doneAt, begun, side }: Props) {
           {t('checkIn.done', { time: formatTime(doneAt) })}
         </p>
       )}
+      {children}
       <div className={place}>
         <LinkButton to="/something-new" variant="outline" block icon={MessageCircleMore}>
           {t(begun.somethingNew ? 'checkIn.goOnSomethingNew' : 'checkIn.somethingNew')}

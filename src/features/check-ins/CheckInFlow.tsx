@@ -39,6 +39,7 @@ export function CheckInFlow({ start, firstName }: { start: CheckInDraft; firstNa
         key={caution.alertId}
         findings={serious}
         clinic={me.clinic}
+        mode={mode}
         alertId={caution.alertId}
         entry={checkIn.alerts.find(({ alert }) => alert.id === caution.alertId)}
         onMistake={checkIn.mistaken}
@@ -68,7 +69,7 @@ export function CheckInFlow({ start, firstName }: { start: CheckInDraft; firstNa
   return (
     <QuestionFrame
       title={title}
-      hint={screen.hintKey ? t(screen.hintKey) : undefined}
+      hint={screen.hintKey ? t(screen.hintKey, { crisisNumber: me.clinic.crisisNumber }) : undefined}
       headingRef={heading}
       progress={{
         current: screens.indexOf(screen) + 1,

@@ -1,9 +1,10 @@
 import { CircleCheck } from 'lucide-react';
 import { useEffect, useRef } from 'react';
-import { useTranslation } from 'react-i18next';
+import { Trans, useTranslation } from 'react-i18next';
 import type { CheckInReceipt } from '#shared/check-ins/contract.ts';
 import type { ClinicCard } from '#shared/clinic/contract.ts';
 import type { Finding } from '#shared/red-flags/findings.ts';
+import { isClosed } from '#src/app/clinic-hours.ts';
 import { EmergencyLine } from '#src/components/EmergencyLine.tsx';
 import { BottomDock } from '#src/components/BottomDock.tsx';
 import { LinkButton } from '#src/components/LinkButton.tsx';
@@ -39,11 +40,12 @@ export function DoneScreen({ receipt, findings, firstName, clinic }: Props) {
     heading.current?.focus();
   }, []);
   const highest = findings.filter(({ urgency }) => urgency === findings[0]?.urgency);
+  const closed = isClosed(clinic, nowMs);
   const emergency = findings[0]?.urgency === 'emergency';
   const others = findings.filter(({ urgency }) => urgency !== findings[0]?.urgency);
   return (
     <div className="base-large flex min-h-dvh flex-col">
-      <main className="mx-auto grid w-full max-w-xl grow content-start gap-5 px-5 py-8">
+      <main className="mx-auto grid w-full max-w-xl grow grid-cols-1 content-start gap-5 px-5 py-8">
         {emergency ? (
           <SignShape shape="octagon" size="large" />
         ) : (
@@ -51,14 +53,16 @@ export function DoneScreen({ receipt, findings, firstName, clinic }: Props) {
         )}
         <div className="grid gap-1">
           <h1 ref={heading} tabIndex={-1} className="text-2xl leading-tight">
-            {emergency ? findingWords(t, highest, clinic).title : t('done.title', { name: firstName })}
+            {emergency
+              ? findingWords(t, highest, clinic, closed).title
+              : t('done.title', { name: firstName })}
           </h1>
           <p>
             {t('done.sent', { time: formatMoment(receipt.receivedAt, nowMs) })}{' '}
             {receipt.clockDoubtful ? t('done.clock') : null}
           </p>
         </div>
-        <Advice findings={highest} others={others} clinic={clinic} />
+        <Advice findings={highest} others={others} clinic={clinic} closed={closed} />
         <div className="grid gap-2">
           {findings.length === 0 ? <p className="font-bold">{t('done.quiet')}</p> : null}
           <ClinicHours clinic={clinic} nowMs={nowMs} />
@@ -77,15 +81,20 @@ export function DoneScreen({ receipt, findings, firstName, clinic }: Props) {
   );
 }
 
-type AdviceProps = { findings: readonly Finding[]; others: readonly Finding[]; clinic: ClinicCard };
+type AdviceProps = {
+  findings: readonly Finding[];
+  others: readonly Finding[];
+  clinic: ClinicCard;
+  closed: boolean;
+};
 
 /** One text for what is most urgent; what is less so is named after it. */
-function Advice({ findings, others, clinic }: AdviceProps) {
+function Advice({ findings, others, clinic, closed }: AdviceProps) {
   const { t } = useTranslation(['check-in-screens', 'rules']);
   const first = findings[0];
   if (!first) return null;
   const look = looks[first.urgency];
-  const words = findingWords(t, findings, clinic);
+  const words = findingWords(t, findings, clinic, closed);
   return (
     <section className={classNames('grid gap-2 rounded px-4 py-3.5', look.ground)}>
       <h2 className="flex items-center gap-2.5 text-lg">
@@ -103,19 +112,26 @@ function Advice({ findings, others, clinic }: AdviceProps) {
         <CautionCalls look={lookOf(findings)} findings={findings} clinic={clinic} />
       ) : null}
       {first.urgency === 'emergency' ? null : <p>{words.next[0]}</p>}
-      {others.length > 0 ? <p>{t('done.alsoSeen', { told: findingWords(t, others, clinic).told })}</p> : null}
+      {others.length > 0 ? (
+        <p>{t('done.alsoSeen', { told: findingWords(t, others, clinic, closed).told })}</p>
+      ) : null}
     </section>
   );
 }
 
 function ClinicHours({ clinic, nowMs }: { clinic: ClinicCard; nowMs: number }) {
   const { t } = useTranslation('check-in-screens');
-  if (clinic.openNow) return <p>{t('done.open')}</p>;
+  if (!isClosed(clinic, nowMs)) return <p>{t('done.open')}</p>;
   return (
     <p>
       {clinic.opensAt ? t('done.opens', { time: formatMoment(clinic.opensAt, nowMs) }) : null}{' '}
       <a href={telephoneHref(clinic.onCallNumber)} className="underline underline-offset-4">
-        {t('done.onCall', { number: clinic.onCallNumber })}
+        <Trans
+          t={t}
+          i18nKey="done.onCall"
+          values={{ number: clinic.onCallNumber }}
+          components={{ tel: <span className="whitespace-nowrap" /> }}
+        />
       </a>
     </p>
   );

@@ -2,6 +2,7 @@ import { BellRing } from 'lucide-react';
 import { useTranslation } from 'react-i18next';
 import type { ClinicCard } from '#shared/clinic/contract.ts';
 import type { Today } from '#shared/plans/contract.ts';
+import { isClosed } from '#src/app/clinic-hours.ts';
 import { formatMoment, telephoneHref } from '#src/lib/format.ts';
 
 type Props = { flag: NonNullable<Today['openFlag']>; clinic: ClinicCard; nowMs: number };
@@ -17,7 +18,7 @@ export function FlagLoop({ flag, clinic, nowMs }: Props) {
   return (
     <section aria-labelledby="loop" className="flex gap-3 rounded bg-bark-wash px-4 py-3.5">
       <BellRing className="mt-0.5 size-6 shrink-0 text-bark" aria-hidden />
-      <div className="grid min-w-0 gap-1 leading-snug">
+      <div className="grid min-w-0 grow grid-cols-1 gap-1 leading-snug">
         <h2 id="loop" className="text-base">
           {t('loop.title')}
         </h2>
@@ -25,13 +26,11 @@ export function FlagLoop({ flag, clinic, nowMs }: Props) {
           {t('loop.sent', { time: formatMoment(raisedAt, nowMs) })} {read}{' '}
           {claimedBy !== null ? t('loop.claimed', { name: claimedBy }) : null}
         </p>
-        {seenBy === null && !clinic.openNow && clinic.opensAt !== null ? (
+        {seenBy === null && isClosed(clinic, nowMs) && clinic.opensAt !== null ? (
           <p>
             <a href={telephoneHref(clinic.onCallNumber)} className="underline underline-offset-4">
-              {t('loop.closed', {
-                time: formatMoment(clinic.opensAt, nowMs),
-                number: clinic.onCallNumber,
-              })}
+              {t('loop.closed', { time: formatMoment(clinic.opensAt, nowMs) })}{' '}
+              <span className="whitespace-nowrap">{clinic.onCallNumber}</span>
             </a>
           </p>
         ) : null}

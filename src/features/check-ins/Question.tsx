@@ -102,7 +102,7 @@ function Ticks({ screen, label, choices, answers, onAnswer }: TicksProps) {
     />
   );
   return (
-    <div role="group" aria-label={label} className="grid gap-2.5">
+    <div role="group" aria-label={label} className="grid gap-2">
       {screen.alone.place === 'first' ? alone : null}
       {choices.map(({ code, textKey }) => (
         <CheckTile

@@ -54,35 +54,39 @@ export function QuestionFrame(props: Props) {
         </h1>
         {hint ? <p className="mt-1 text-ink-soft">{hint}</p> : null}
         <div className="mt-4">{props.children}</div>
+        {/* In the flow and not in the dock, which must leave room for "none of these" on a phone. */}
+        <div
+          className={classNames(
+            justDone &&
+              'mt-4 flex flex-wrap items-center gap-3 rounded bg-leaf-wash px-3 py-1.5 leading-snug',
+            side === 'left' && 'flex-row-reverse',
+          )}
+        >
+          {justDone ? <History className="size-6 shrink-0 text-leaf" aria-hidden /> : null}
+          {/* The region stands from the start, or what arrives in it is not announced. */}
+          <p role="status" className={classNames('min-w-0 grow', justDone && 'basis-40')}>
+            {justDone?.words}
+          </p>
+          {justDone?.onUndo ? (
+            <Button variant="outline" onClick={justDone.onUndo}>
+              {t('undo')}
+            </Button>
+          ) : null}
+        </div>
       </main>
       <BottomDock>
-        <div className="bg-paper">
-          <div className="mx-auto grid w-full max-w-xl gap-2.5 px-5 py-2">
-            <div
-              className={classNames(
-                justDone && 'flex items-center gap-3 rounded bg-leaf-wash px-3 py-1.5 leading-snug',
-                side === 'left' && 'flex-row-reverse',
-              )}
-            >
-              {justDone ? <History className="size-6 shrink-0 text-leaf" aria-hidden /> : null}
-              {/* The region stands from the start, or what arrives in it is not announced. */}
-              <p role="status" className="min-w-0 grow">
-                {justDone?.words}
-              </p>
-              {justDone?.onUndo ? (
-                <Button variant="outline" onClick={justDone.onUndo}>
-                  {t('undo')}
+        {props.footer || props.onNext ? (
+          <div className="bg-paper">
+            <div className="mx-auto grid w-full max-w-xl gap-2.5 px-5 py-2">
+              {props.footer}
+              {props.onNext ? (
+                <Button size="large" block iconAfter={ArrowRight} onClick={props.onNext}>
+                  {t('next')}
                 </Button>
               ) : null}
             </div>
-            {props.footer}
-            {props.onNext ? (
-              <Button size="large" block iconAfter={ArrowRight} onClick={props.onNext}>
-                {t('next')}
-              </Button>
-            ) : null}
           </div>
-        </div>
+        ) : null}
         <EmergencyLine label={tCommon('emergency.label')} href={telephoneHref(emergencyNumber)}>
           {tCommon('emergency.short', { number: emergencyNumber })}
         </EmergencyLine>

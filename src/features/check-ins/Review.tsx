@@ -28,7 +28,7 @@ export function Review({ draft, side, onNote, onChange }: Props) {
   const open = unanswered(draft).length;
   const left = noteMaxCharacters - (answers.note?.length ?? 0);
   return (
-    <div className="grid gap-6">
+    <div className="grid grid-cols-1 gap-6">
       {open > 0 ? <Banner tone="warning">{t('review.unanswered', { count: open })}</Banner> : null}
       <TextArea
         label={t('review.note')}
@@ -49,11 +49,11 @@ export function Review({ draft, side, onNote, onChange }: Props) {
               <li
                 key={screen.id}
                 className={classNames(
-                  'flex items-center gap-3 border-b border-wire py-2 last:border-b-0',
+                  'flex flex-wrap items-center gap-x-3 border-b border-wire py-2 last:border-b-0',
                   side === 'left' && 'flex-row-reverse',
                 )}
               >
-                <div className="min-w-0 grow leading-snug">
+                <div className="min-w-0 grow basis-48 leading-snug">
                   <p className="text-sm text-ink-soft">{question}</p>
                   <p className="font-bold">
                     {answerWords(t, screen, answers, context) ?? t('review.noAnswer')}

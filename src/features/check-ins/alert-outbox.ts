@@ -4,9 +4,10 @@ import { createSignal } from '#src/lib/signal.ts';
 
 type Mistake = { id: string; answeredAt: string };
 
-/** An alert on its way to the clinic. */
+/** An alert on its way to the clinic, or a mistake on its way after an alert that the clinic has. */
 export type OutgoingAlert = {
-  alert: Omit<PostAlert, 'sentAt'>;
+  /** Only the id where an earlier visit has delivered the alert: the device does not keep it any longer. */
+  alert: Omit<PostAlert, 'sentAt'> | Pick<PostAlert, 'id'>;
   /** When it was ticked, by the server's clock as far as it is known here: from here the wait is counted. */
   tickedAtMs: number;
   receipt: AlertReceipt | null;
@@ -27,8 +28,12 @@ type Ports = {
 const firstDelayMs = 1_000;
 const longestDelayMs = 15_000;
 
-const isDone = ({ receipt, refused, mistake }: OutgoingAlert): boolean =>
-  refused || (receipt !== null && (mistake === null || mistake.sent));
+/** Whether the server has the alert itself. */
+export const isReceived = ({ alert, receipt }: Pick<OutgoingAlert, 'alert' | 'receipt'>): boolean =>
+  receipt !== null || !('answers' in alert);
+
+const isDone = (entry: OutgoingAlert): boolean =>
+  entry.refused || (isReceived(entry) && (entry.mistake === null || entry.mistake.sent));
 
 export type AlertOutbox = ReturnType<typeof createAlertOutbox>;
 
@@ -53,7 +58,7 @@ export function createAlertOutbox({ postAlert, postMistake, isSignedIn, read, ke
   }
 
   async function sendOne({ alert, receipt, mistake }: OutgoingAlert) {
-    if (!receipt) {
+    if (!receipt && 'answers' in alert) {
       const accepted = await postAlert({ ...alert, sentAt: new Date().toISOString() });
       update(alert.id, () => ({ receipt: accepted }));
     }
@@ -101,8 +106,17 @@ export function createAlertOutbox({ postAlert, postMistake, isSignedIn, read, ke
       failures = 0;
       start();
     },
-    reportMistake(alertId: string, mistake: Mistake) {
-      update(alertId, () => ({ mistake: { ...mistake, sent: false } }));
+    /** Also for an alert that an earlier visit delivered: then nothing of it is left here but its id. */
+    reportMistake(alertId: string, mistake: Mistake, reportedAtMs: number) {
+      const pending = { ...mistake, sent: false };
+      if (entries.some(({ alert }) => alert.id === alertId)) update(alertId, () => ({ mistake: pending }));
+      else {
+        const alert = { id: alertId };
+        set([
+          ...entries,
+          { alert, tickedAtMs: reportedAtMs, receipt: null, refused: false, mistake: pending },
+        ]);
+      }
       failures = 0;
       start();
     },

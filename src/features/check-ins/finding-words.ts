@@ -15,21 +15,35 @@ export type FindingWords = {
   next: string[];
 };
 
+type T = TFunction<readonly ['check-in-screens', 'rules']>;
+
+/** What no other rule grades is told back by the words that were ticked. */
+function signWords(t: T, { values }: Finding, otherwise: string): string {
+  const signs = typeof values.signs === 'string' ? values.signs.split(', ').filter(Boolean) : [];
+  const words = signs.map((sign) => t([`check-in:symptoms.${sign}`, `signs.${sign}`, otherwise]));
+  return words.length > 0 ? unique(words).join('; ') : t(otherwise);
+}
+
+/** While nobody is there to call, "we will call you" would be untrue: the person calls. */
+const isToCall = ({ code, urgency }: Finding, closed: boolean): boolean =>
+  closed && urgency === 'urgent' && code !== 'self-harm';
+
 /** Several findings in the patient's words as one text: each thing is said once, the most urgent first. */
 export function findingWords(
-  t: TFunction<readonly ['check-in-screens', 'rules']>,
+  t: T,
   findings: readonly Finding[],
   { emergencyNumber, crisisNumber, onCallNumber }: ClinicCard,
+  closed: boolean,
 ): FindingWords {
   const texts = findings.map((finding) => {
     const { values, ...keys } = patientTextOf(finding);
     const words = (key: string) => t(key, { emergencyNumber, crisisNumber, onCallNumber, ...values });
     return {
-      title: words(keys.title),
-      told: words(keys.told),
+      title: isToCall(finding, closed) ? t('caution.closed.title') : words(keys.title),
+      told: finding.code === 'unclassified' ? signWords(t, finding, keys.told) : words(keys.told),
       why: words(keys.why),
       meanwhile: words(keys.meanwhile),
-      next: words(keys.next),
+      next: isToCall(finding, closed) ? t('caution.closed.next') : words(keys.next),
     };
   });
   return {

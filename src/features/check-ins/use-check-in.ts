@@ -113,7 +113,8 @@ export function useCheckIn(start: CheckInDraft) {
   function mistaken() {
     const { caution } = draft;
     if (!caution) return;
-    outbox.reportMistake(caution.alertId, { id: newId(), answeredAt: new Date().toISOString() });
+    const mistake = { id: newId(), answeredAt: new Date().toISOString() };
+    outbox.reportMistake(caution.alertId, mistake, serverNow());
     save({ ...takeBack(draft), lastAt: null });
     setTakenBack(true);
     goTo(caution.atBefore);

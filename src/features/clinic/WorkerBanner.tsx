@@ -9,7 +9,10 @@ function CallLine({ clinic: { onCallNumber } }: Props) {
   return (
     <>
       The phone lines stay open: on call{' '}
-      <a href={telephoneHref(onCallNumber)} className="font-bold underline underline-offset-3">
+      <a
+        href={telephoneHref(onCallNumber)}
+        className="font-bold whitespace-nowrap underline underline-offset-3"
+      >
         {onCallNumber}
       </a>
       .
@@ -26,8 +29,9 @@ function waitingWords(unevaluated: number, lastBeatAt: string | null, timeZone: 
 }
 
 /**
- * Stands over every clinic screen while check-ins may be shown late, or while this screen cannot know. A flag
- * that is missing looks like a patient who is well, so silence would be the worst answer.
+ * Stands over every clinic screen while check-ins may be shown late, while mails are not sent, or while this
+ * screen cannot know. A flag that is missing looks like a patient who is well, so silence would be the worst
+ * answer.
  */
 export function WorkerBanner({ clinic }: Props) {
   const { data, error } = useWorkerHealth();
@@ -42,10 +46,19 @@ export function WorkerBanner({ clinic }: Props) {
         <Banner tone="danger" title="The server cannot be reached. What you see may be old.">
           Check the connection; this screen tries again by itself. <CallLine clinic={clinic} />
         </Banner>
-      ) : isLate ? (
+      ) : null}
+      {!error && isLate ? (
         <Banner tone="danger" title="Check-ins may be shown late.">
           {waitingWords(data.unevaluated, data.lastBeatAt, clinic.timeZone)} An empty queue does not mean that
           all is well. Tell whoever looks after Espalier. <CallLine clinic={clinic} />
+        </Banner>
+      ) : null}
+      {!error && data !== undefined && data.unsent > 0 ? (
+        <Banner
+          tone="danger"
+          title={data.unsent === 1 ? '1 mail could not be sent.' : `${data.unsent} mails could not be sent.`}
+        >
+          Look at the round itself, not only at your mail.
         </Banner>
       ) : null}
     </div>

@@ -19,11 +19,11 @@ export function PhaseTrunk({ phases, nowMs, children }: Props) {
   const { t, i18n } = useTranslation(['my-plan', 'plan']);
   const date = localDateOf(nowMs);
   return (
-    <ol className="grid">
+    <ol className="grid grid-cols-1">
       {phases.map((phase, index) => (
         <li
           key={phase.code}
-          className="relative grid pb-7 pl-9 last:pb-0"
+          className="relative grid grid-cols-1 pb-7 pl-9 last:pb-0"
           aria-current={phase.current ? 'step' : undefined}
         >
           {index < phases.length - 1 ? (

@@ -1,5 +1,6 @@
 import { Trans, useTranslation } from 'react-i18next';
 import type { ClinicCard } from '#shared/clinic/contract.ts';
+import { isClosed } from '#src/app/clinic-hours.ts';
 import { Banner } from '#src/components/Banner.tsx';
 import { formatTime, formatWeekday, localDateOf, telephoneHref } from '#src/lib/format.ts';
 import { useNowMs } from '#src/lib/now.ts';
@@ -12,9 +13,8 @@ const openingWords = (opensAt: string, timeZone: string): string =>
 export function OutOfHours({ clinic }: { clinic: ClinicCard }) {
   const { t } = useTranslation('threads');
   const nowMs = useNowMs();
-  const { openNow, opensAt, timeZone, onCallNumber } = clinic;
-  // The card may be older than the opening hour that it names.
-  if (openNow || (opensAt !== null && Date.parse(opensAt) <= nowMs)) return null;
+  const { opensAt, timeZone, onCallNumber } = clinic;
+  if (!isClosed(clinic, nowMs)) return null;
   return (
     <Banner tone="warning">
       {opensAt === null
@@ -27,7 +27,10 @@ export function OutOfHours({ clinic }: { clinic: ClinicCard }) {
         components={{
           call: (
             // The words come from the translation; the link must not be empty for the linter's eyes.
-            <a href={telephoneHref(onCallNumber)} className="font-bold underline underline-offset-3">
+            <a
+              href={telephoneHref(onCallNumber)}
+              className="font-bold whitespace-nowrap underline underline-offset-3"
+            >
               {onCallNumber}
             </a>
           ),

@@ -28,7 +28,7 @@ export function ThreadRow({ thread, side, selected }: Props) {
         selected ? 'border-l-leaf bg-sheet' : 'border-l-transparent hover:bg-bark-wash',
       )}
     >
-      <div className="min-w-0 grow basis-40">
+      <div className="min-w-0 grow basis-40 wrap-anywhere">
         <Link
           to={threadPlace(side, thread.id)}
           className="after:absolute after:inset-0 focus-visible:outline-none"

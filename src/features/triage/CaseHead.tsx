@@ -33,12 +33,12 @@ export function CaseHead({ flag, headingRef, claim, release }: Props) {
             {patient.name}, {person.age}
           </h2>
           <p className="mt-1 text-ink-soft first-letter:uppercase">
-            {longOperation(patient)} · day {patient.day}, {person.phase} phase · {person.surgeon}
+            {longOperation(patient)}&nbsp;· day {patient.day}, {person.phase} phase&nbsp;· {person.surgeon}
           </p>
         </div>
         <div className="flex flex-wrap gap-3">
           <LinkButton href={telephoneHref(person.phone)} variant="outline" icon={Phone}>
-            Call {person.phone}
+            <span className="whitespace-nowrap">Call {person.phone}</span>
           </LinkButton>
           {claim.possible ? (
             <Button icon={Hand} busy={claim.busy} onClick={claim.onClaim}>

@@ -52,7 +52,7 @@ export function CaseHistory({ flag, timeZone, nowMs }: Props) {
                 <div className="mt-0.5 flex flex-wrap gap-x-3 text-sm text-ink-soft">
                   <UrgencySign urgency={earlier.urgency} />
                   <span>
-                    {formatMoment(earlier.raisedAt, nowMs, timeZone)} · {stateWords[earlier.state]}
+                    {formatMoment(earlier.raisedAt, nowMs, timeZone)}&nbsp;· {stateWords[earlier.state]}
                   </span>
                 </div>
               </li>

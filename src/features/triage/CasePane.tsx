@@ -61,7 +61,7 @@ function Case({ flag, nowMs }: { flag: FlagCase; nowMs: number }) {
   const reply = useDraft(me.personId, `flag/${flag.id}`);
   const heading = useRef<HTMLHeadingElement>(null);
   useEffect(() => heading.current?.focus({ preventScroll: true }), []);
-  useSeeOnce(flag.id, flag.state !== 'closed');
+  useSeeOnce(flag, flag.state !== 'closed');
 
   const isMine = flag.claimedBy?.personId === me.personId;
   const mayClaim = afterMove(flag.state, 'claim') !== null;
@@ -96,7 +96,7 @@ function Case({ flag, nowMs }: { flag: FlagCase; nowMs: number }) {
       <SafetyFacts person={flag.person} />
       <div className="mt-6 grid items-start gap-x-7 gap-y-7 @2xl/case:grid-cols-[minmax(0,1fr)_minmax(0,18rem)]">
         <div className="grid gap-7">
-          <CaseReasons reasons={flag.reasons} />
+          <CaseReasons flag={flag} timeZone={timeZone} nowMs={nowMs} />
           <BesideUsual flag={flag} timeZone={timeZone} nowMs={nowMs} />
         </div>
         <div className="grid gap-7 @2xl/case:row-span-2">

@@ -87,7 +87,7 @@ export function CloseFlagDialog({ flag, onOpenChange, onClosed, notice }: Props)
       <form
         id="close-flag"
         noValidate
-        className="grid gap-6"
+        className="grid gap-5"
         onSubmit={(event) => {
           const form = event.currentTarget;
           void handleSubmit(submit, (wrong) => focusFirst(form, wrong))(event);
@@ -101,6 +101,7 @@ export function CloseFlagDialog({ flag, onOpenChange, onClosed, notice }: Props)
               legend="Outcome"
               name={field.name}
               options={outcomeOptions}
+              columns={2}
               value={field.value ?? null}
               onChange={field.onChange}
               error={errors.outcome?.message}
@@ -115,6 +116,7 @@ export function CloseFlagDialog({ flag, onOpenChange, onClosed, notice }: Props)
               legend="Was it worth raising?"
               name={field.name}
               options={worthOptions}
+              columns={2}
               value={field.value ?? null}
               onChange={field.onChange}
               error={errors.worthRaising?.message}

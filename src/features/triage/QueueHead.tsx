@@ -31,7 +31,7 @@ export function QueueHead({ round, headingRef, latest, caseOpen }: Props) {
         </h1>
         {round ? (
           <p className="mt-1 text-ink-soft">
-            <strong className="text-ink">{round.flags.length} to see</strong> · {round.quiet} checked in
+            <strong className="text-ink">{round.flags.length} to see</strong>&nbsp;· {round.quiet} checked in
             quietly
           </p>
         ) : null}

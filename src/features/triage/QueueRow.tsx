@@ -5,6 +5,7 @@ import { Sparkline } from '#src/components/Sparkline.tsx';
 import { classNames } from '#src/components/class-names.ts';
 import { Tag } from '#src/components/Tag.tsx';
 import { formatMoment } from '#src/lib/format.ts';
+import { CalledMistake } from './CalledMistake.tsx';
 import { seriesInWords, shortOperation } from './words.ts';
 import { painTone } from './pain-tone.ts';
 
@@ -65,9 +66,10 @@ export function QueueRow({ flag, selected, isNew, meId, timeZone, nowMs }: Props
             ) : null}
             {flag.headline}
           </p>
+          <CalledMistake flag={flag} timeZone={timeZone} nowMs={nowMs} />
           {claimedBy && claimedAt ? (
             <p className="mt-1 text-sm text-ink-soft">
-              {claimedBy.personId === meId ? 'You have it' : `${claimedBy.name} has it`} · since{' '}
+              {claimedBy.personId === meId ? 'You have it' : `${claimedBy.name} has it`}&nbsp;· since{' '}
               {formatMoment(claimedAt, nowMs, timeZone)}
             </p>
           ) : null}

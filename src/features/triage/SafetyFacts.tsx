@@ -1,5 +1,4 @@
 import type { FlagCase } from '#shared/triage/contract.ts';
-import { classNames } from '#src/components/class-names.ts';
 import { telephoneHref } from '#src/lib/format.ts';
 
 /** A telephone number inside a line of text: seven digits or more, with the marks that people put between. */
@@ -13,7 +12,7 @@ function WithCallLink({ text }: { text: string }) {
   return (
     <>
       {before}
-      <a href={telephoneHref(number)} className="font-bold underline underline-offset-3">
+      <a href={telephoneHref(number)} className="font-bold whitespace-nowrap underline underline-offset-3">
         {number}
       </a>
       {after}
@@ -29,22 +28,23 @@ function thinnerWords(bloodThinner: string | null): string {
 
 const isNone = (fact: string): boolean => /^(none|no|nil)\b/iu.test(fact.trim());
 
-/** What must not be overlooked before anything is advised. */
+/** What must not be overlooked before anything is advised; what endangers is bold. */
 export function SafetyFacts({ person }: { person: FlagCase['person'] }) {
   const { bloodThinner, allergies } = person;
-  // The colour only supports the words: a fact is always shown as it was recorded.
-  const danger = [bloodThinner, allergies].some((fact) => fact === null || !isNone(fact));
+  // Bold only supports the words: a fact is always shown as it was recorded.
+  const thinnerEndangers = bloodThinner === null || !isNone(bloodThinner);
+  const allergyEndangers = allergies !== null && !isNone(allergies);
   return (
-    <section
-      aria-label="Safety facts"
-      className={classNames('rounded px-4 py-3 leading-snug', danger ? 'bg-clay-wash' : 'bg-bark-wash')}
-    >
-      <p className={danger ? 'font-bold' : undefined}>
-        {thinnerWords(bloodThinner)} Allergies: {allergies ?? 'not recorded, so ask'}.
+    <section aria-label="Safety facts" className="rounded bg-bark-wash px-4 py-3 leading-snug">
+      <p>
+        <span className={thinnerEndangers ? 'font-bold' : undefined}>{thinnerWords(bloodThinner)}</span>{' '}
+        <span className={allergyEndangers ? 'font-bold' : undefined}>
+          Allergies: {allergies ?? 'not recorded, so ask'}.
+        </span>
       </p>
       <p className="mt-1 text-sm">
-        Emergency contact: <WithCallLink text={person.emergencyContact} /> · Chart {person.chartNumber} ·
-        Speaks {person.language}
+        Emergency contact: <WithCallLink text={person.emergencyContact} />
+        &nbsp;· Chart {person.chartNumber}&nbsp;· Speaks {person.language}
       </p>
     </section>
   );

@@ -11,7 +11,9 @@ export function refusalOf(error: unknown, kept: string | null = null): Refusal {
   if (error instanceof ApiProblem) {
     if (error.code === 'claimed-by-other') {
       const holder = error.body.claimedBy ?? 'A colleague';
-      return { title: `${holder} has claimed this flag.`, detail: `Nothing was changed by you.${after}` };
+      // Where something was written or chosen, it is that which was refused and not a claim.
+      const refused = kept === null ? 'Your claim was not made.' : `Nothing was changed.${after}`;
+      return { title: `${holder} has claimed this flag.`, detail: refused };
     }
     if (error.code === 'internal' && error.body.reportId !== undefined) {
       return { title: error.message, detail: `Report ${error.body.reportId}.${after}` };

@@ -50,7 +50,7 @@ export const announcementOf = ({ urgency, patient, headline }: FlagRow): string 
 
 const eventWords: Record<FlagCase['events'][number]['kind'], string> = {
   raised: 'Raised',
-  'raised-higher': 'Raised to a higher urgency',
+  'raised-again': 'Raised again',
   seen: 'Seen by',
   claimed: 'Claimed by',
   released: 'Released by',
@@ -69,7 +69,7 @@ export function eventSentence({ kind, by }: FlagCase['events'][number]): string 
 /** What an event carries besides, in words; ids and codes that say nothing to a reader are left out. */
 export function eventDetail({ kind, detail }: FlagCase['events'][number]): string | null {
   if (detail === null) return null;
-  if (kind === 'raised' || kind === 'raised-higher') return urgencyWords[detail as Urgency] ?? null;
+  if (kind === 'raised' || kind === 'raised-again') return urgencyWords[detail as Urgency] ?? null;
   if (kind === 'closed') return outcomeWords[detail as Outcome] ?? null;
   return null;
 }

@@ -104,11 +104,34 @@ describe('the alert outbox', () => {
     outbox.add(alert, 0);
     await vi.advanceTimersByTimeAsync(0);
     const mistake = { id: 'mistake-1', answeredAt: '2026-12-01T08:42:00.000Z' };
-    outbox.reportMistake(alert.id, mistake);
+    outbox.reportMistake(alert.id, mistake, 0);
     await vi.advanceTimersByTimeAsync(0);
     await vi.advanceTimersByTimeAsync(15_000);
     expect(postMistake).toHaveBeenCalledExactlyOnceWith(alert.id, mistake);
     expect(postAlert.mock.invocationCallOrder.at(-1)).toBeLessThan(postMistake.mock.invocationCallOrder[0]!);
+  });
+
+  it('reports a mistake about an alert that an earlier visit delivered, and keeps trying until it is accepted', async () => {
+    const { outbox, postAlert, postMistake, kept } = setUp();
+    postMistake.mockRejectedValueOnce(new Unreachable());
+    const mistake = { id: 'mistake-1', answeredAt: '2026-12-01T08:42:00.000Z' };
+    outbox.reportMistake(alert.id, mistake, 0);
+    await vi.advanceTimersByTimeAsync(0);
+    const waiting = kept.at(-1)!;
+    expect(waiting.map((entry) => entry.alert.id)).toEqual([alert.id]);
+
+    // What waits survives one more reload.
+    const later = setUp({ waiting });
+    later.outbox.start();
+    await vi.advanceTimersByTimeAsync(0);
+    expect(later.postMistake).toHaveBeenCalledExactlyOnceWith(alert.id, expect.objectContaining(mistake));
+    expect(later.kept.at(-1)).toEqual([]);
+
+    await vi.advanceTimersByTimeAsync(1_000);
+    expect(postMistake).toHaveBeenCalledTimes(2);
+    expect(kept.at(-1)).toEqual([]);
+    expect(postAlert).not.toHaveBeenCalled();
+    expect(later.postAlert).not.toHaveBeenCalled();
   });
 
   it('says so when the server refuses for good, and goes on with the next alert', async () => {

@@ -1,54 +1,23 @@
-import { screen, waitFor, within } from '@testing-library/react';
-import { userEvent } from '@testing-library/user-event';
-import { beforeEach, describe, expect, it, vi } from 'vitest';
+import { screen } from '@testing-library/react';
+import { beforeEach, describe, expect, it } from 'vitest';
 import type { Me } from '#shared/accounts/contract.ts';
-import { sessionQuery } from '#src/app/session.tsx';
-import { CheckInFlow } from '#src/features/check-ins/CheckInFlow.tsx';
 import type { CheckInDraft } from '#src/features/check-ins/draft.ts';
-import { checkInWords } from '#src/features/check-ins/word-files.ts';
-import { loadWords, startI18n } from '#src/lib/i18n.ts';
-import { lost, noorSignedIn, serve, showTo } from '../clinic/screen.tsx';
+import { lost, serve } from '../clinic/screen.tsx';
 import { aDraft } from './drafts.ts';
+import { arriveAsInes, heading, press, showFlow, tick } from './flow-screen.tsx';
 
-const user = userEvent.setup({ delay: null });
-
-let personCount = 0;
 let ines: Me;
-
 beforeEach(async () => {
-  sessionStorage.clear();
-  localStorage.clear();
-  vi.spyOn(window, 'scrollTo').mockImplementation(() => undefined);
-  // A person of her own for each test, since the outbox of alerts lives as long as the tab.
-  personCount += 1;
-  ines = {
-    ...noorSignedIn,
-    personId: `5b1f6a54-58a0-4f0e-9a5b-0000000000${10 + personCount}`,
-    name: 'Ines Valcourt',
-    roles: ['patient'],
-    // She did not choose to stay signed in, so nothing may outlive the tab.
-    session: { idleEndsAt: '2026-12-01T09:10:00.000Z', endsAt: '2026-12-02T07:00:00.000Z' },
-    patient: { id: '0f3a7c1e-6a52-4f0b-8a44-3b6f6b0f2a11', arm: 'left', controlsTowards: 'right' },
-  };
-  await startI18n();
-  await loadWords(checkInWords);
+  ines = await arriveAsInes();
 });
+const show = (start: CheckInDraft = aDraft()) => showFlow(ines, start);
 
-async function show(start: CheckInDraft = aDraft()) {
-  const shown = await showTo(ines, <CheckInFlow start={start} firstName="Ines" />);
-  shown.queryClient.setQueryData(sessionQuery.queryKey, { me: ines });
-  return shown;
-}
-
-const heading = () => screen.getByRole('heading', { level: 1 });
-const press = (name: string | RegExp) => user.click(screen.getByRole('button', { name }));
-const tick = (name: string | RegExp) => user.click(screen.getByRole('checkbox', { name }));
-const receipt = (body: unknown) => {
-  const { id, checkInId } = body as { id: string; checkInId: string };
-  return { id, checkInId, receivedAt: '2026-12-01T08:41:00.000Z', seen: null };
-};
-const json = (body: unknown) =>
-  new Response(JSON.stringify(body), { headers: { 'content-type': 'application/json' } });
+const checkInReceipt = (body: unknown) => ({
+  id: (body as { id: string }).id,
+  receivedAt: '2026-12-01T08:41:00.000Z',
+  localDate: '2026-12-01',
+  clockDoubtful: false,
+});
 const reviewed = () =>
   aDraft({
     answers: {
@@ -97,6 +66,25 @@ describe('a check-in', () => {
     expect(screen.getByRole('button', { name: 'None of these' })).toHaveProperty('disabled', true);
   });
 
+  it('keeps what was just answered out of the dock, which must not cover "none of these"', async () => {
+    await show();
+    await press('4');
+    expect(screen.getByRole('status').closest('[data-dock]')).toBeNull();
+    expect(screen.getByRole('button', { name: 'Undo' }).closest('[data-dock]')).toBeNull();
+  });
+
+  it('tells back in the words of the tile what no other rule grades', async () => {
+    serve({ 'POST /api/check-ins': ({ body }) => checkInReceipt(body) });
+    const { answers } = reviewed();
+    await show({
+      ...reviewed(),
+      answers: { ...answers, symptomsNone: undefined, symptoms: ['hand-stiff', 'call-me'] },
+    });
+    await press('Send');
+    await screen.findByRole('heading', { name: 'Thank you, Ines' });
+    expect(screen.getByText(/^Hand stiff; Please call me\.$/)).toBeDefined();
+  });
+
   it('keeps each answer on the device under the person’s own name', async () => {
     await show();
     await press('4');
@@ -107,12 +95,7 @@ describe('a check-in', () => {
 
   it('is sent from the review, and what was kept goes with it', async () => {
     const sent = serve({
-      'POST /api/check-ins': ({ body }) => ({
-        id: (body as { id: string }).id,
-        receivedAt: '2026-12-01T08:41:00.000Z',
-        localDate: '2026-12-01',
-        clockDoubtful: false,
-      }),
+      'POST /api/check-ins': ({ body }) => checkInReceipt(body),
     });
     await show(reviewed());
     await press('Send');
@@ -133,15 +116,7 @@ describe('a check-in', () => {
   it('says that nothing was sent when the line is lost, keeps all, and repeats under the same id', async () => {
     let online = false;
     const sent = serve({
-      'POST /api/check-ins': ({ body }) =>
-        online
-          ? {
-              id: (body as { id: string }).id,
-              receivedAt: '2026-12-01T08:41:00.000Z',
-              localDate: '2026-12-01',
-              clockDoubtful: false,
-            }
-          : lost,
+      'POST /api/check-ins': ({ body }) => (online ? checkInReceipt(body) : lost),
     });
     await show(reviewed());
     await press('Send');
@@ -152,82 +127,5 @@ describe('a check-in', () => {
     const [first, second] = sent.map(({ body }) => body as { id: string; answers: unknown });
     expect(second?.id).toBe(first?.id);
     expect(second?.answers).toEqual(first?.answers);
-  });
-});
-
-describe('an emergency answer', () => {
-  it('brings the caution up at the tick with no network, says that nothing is sent, and then who has seen it', async () => {
-    let online = false;
-    let seen = false;
-    const sent = serve({
-      'POST /api/alerts': ({ body }) => (online ? receipt(body) : lost),
-    });
-    const known = fetch;
-    vi.stubGlobal('fetch', async (address: string, init: RequestInit) => {
-      if (init.method !== 'GET') return known(address, init);
-      const id = address.split('/').at(-1);
-      const petra = { by: 'Petra Lindqvist', at: '2026-12-01T08:43:00.000Z' };
-      return json({ ...receipt({ id, checkInId: aDraft().id }), seen: seen ? petra : null });
-    });
-    const { queryClient } = await show(aDraft({ at: 'danger' }));
-    await tick('Chest pain or trouble breathing');
-    expect(heading().textContent).toContain('Call 911 now');
-    expect(screen.getByRole('link', { name: 'Call 911' }).getAttribute('href')).toBe('tel:911');
-    expect(screen.getByText(/chest pain or trouble breathing\./)).toBeDefined();
-    expect(screen.getByText('Not sent yet.')).toBeDefined();
-    online = true;
-    window.dispatchEvent(new Event('online'));
-    expect(await screen.findByText(/Sent to the clinic/)).toBeDefined();
-    expect(screen.getByText(/Nobody has seen it yet/)).toBeDefined();
-    seen = true;
-    await queryClient.invalidateQueries({ queryKey: ['alerts'] });
-    expect(await screen.findByText(/Petra Lindqvist has seen it/)).toBeDefined();
-    expect(new Set(sent.map(({ body }) => (body as { id: string }).id)).size).toBe(1);
-  });
-
-  it('is taken back as a mistake: a record of its own, and the question stands without the tick', async () => {
-    const sent = serve({
-      'POST /api/alerts': ({ body }) => receipt(body),
-    });
-    const known = fetch;
-    vi.stubGlobal('fetch', async (address: string, init: RequestInit) => {
-      const mistake = /^\/api\/alerts\/([^/]+)\/mistakes$/.exec(address);
-      if (mistake) sent.push({ method: 'POST', path: 'mistake', body: mistake[1] });
-      if (mistake || init.method === 'GET') return json(receipt({ id: 'x', checkInId: 'y' }));
-      return known(address, init);
-    });
-    await show(aDraft({ at: 'danger' }));
-    await tick('Hand cold, pale or blue');
-    await press('I ticked this by mistake');
-    expect(heading().textContent).toContain('Any of these');
-    expect(screen.getByRole('checkbox', { name: 'Hand cold, pale or blue' })).toHaveProperty(
-      'checked',
-      false,
-    );
-    expect(screen.getByRole('status').textContent).toContain('Taken back');
-    await waitFor(() => expect(sent.map(({ path }) => path)).toEqual(['/api/alerts', 'mistake']));
-    expect(sent[1]?.body).toBe((sent[0]?.body as { id: string }).id);
-  });
-
-  it('lets the person go on with the check-in after the caution', async () => {
-    serve({ 'POST /api/alerts': () => lost });
-    await show(aDraft({ at: 'danger' }));
-    await tick('Chest pain or trouble breathing');
-    await press('Go on with the check-in');
-    expect(screen.getByRole('checkbox', { name: 'Chest pain or trouble breathing' })).toHaveProperty(
-      'checked',
-      true,
-    );
-    await press('Next');
-    expect(heading().textContent).toContain('Chest pain or trouble breathing: when?');
-  });
-
-  it('has a screen of its own with the crisis line for thoughts of self-harm', async () => {
-    serve({ 'POST /api/alerts': () => lost });
-    await show(aDraft({ at: 'self-harm', answers: { symptoms: ['low-mood'] } }));
-    await press('Not sure');
-    expect(heading().textContent).toContain('Please talk to someone now');
-    const calls = within(screen.getByRole('main')).getAllByRole('link');
-    expect(calls[0]?.getAttribute('href')).toBe('tel:988');
   });
 });

@@ -46,6 +46,32 @@ describe('an open case', () => {
     expect(sent.filter(({ path }) => path === `${casePath}/seen`)).toHaveLength(1);
   });
 
+  it('is recorded as seen again when it was raised again while it is on the screen', async () => {
+    const sent = serveCase();
+    const { queryClient } = await show();
+    await screen.findByRole('heading', { name: /Tobias Ahlgren/ });
+    const seen = () => sent.filter(({ path }) => path === `${casePath}/seen`);
+    const at = '2026-12-01T12:20:00.000Z';
+    const seenEvent = { id: 'e2', kind: 'seen' as const, at, by: noor.name, detail: null, note: null };
+    current = aCase({ events: [...current.events, seenEvent] });
+    await act(() => queryClient.invalidateQueries());
+    await screen.findByText('Seen by Noor Haddad');
+    expect(seen(), 'other events do not count').toHaveLength(1);
+    const again = { ...seenEvent, id: 'e3', kind: 'raised-again' as const, by: null };
+    current = aCase({ urgency: 'emergency', events: [...current.events, again] });
+    await act(() => queryClient.invalidateQueries());
+    await waitFor(() => expect(seen()).toHaveLength(2));
+  });
+
+  it('says above the reasons that the patient called a tick a mistake', async () => {
+    current = aCase({ calledMistakeAt: '2026-12-01T07:08:00.000Z' });
+    serveCase();
+    await show();
+    const said = await screen.findByText('The patient says: ticked by mistake, 02:08.');
+    const reason = screen.getByRole('heading', { name: /Fall with injury/ });
+    expect(said.compareDocumentPosition(reason)).toBe(Node.DOCUMENT_POSITION_FOLLOWING);
+  });
+
   it('gives its reason with the rule, its version and its source, and the safety facts', async () => {
     serveCase();
     await show();

@@ -13,6 +13,11 @@ describe('what is said when a move is refused', () => {
     expect(detail).toContain('Your text is kept here.');
   });
 
+  it('says of a claim that came second that it was not made', () => {
+    const conflict = answered(new Problem('claimed-by-other', undefined, { claimedBy: 'Callum Reyes' }));
+    expect(refusalOf(conflict).detail).toBe('Your claim was not made.');
+  });
+
   it('shows what the server gave as its reason', () => {
     expect(refusalOf(answered(new Problem('state-conflict', 'This flag is closed.'))).title).toBe(
       'This flag is closed.',

@@ -83,7 +83,7 @@ describe('an alert at the tick and its finished check-in', () => {
       expect.arrayContaining(['bleeding', 'fall-with-injury', 'pain-severe']),
     );
     expect(reasons[0]?.code).toBe('bleeding');
-    expect(events.map(({ kind }) => kind)).toEqual(['raised', 'raised-higher']);
+    expect(events.map(({ kind }) => kind)).toEqual(['raised', 'raised-again']);
   });
 
   it('are one flag in whatever order they are evaluated, and nothing in the later lowers it', async () => {
@@ -113,10 +113,7 @@ describe('an alert at the tick and its finished check-in', () => {
        where f.patient_id = $1 and n.person_id = $2`,
       [patient.patientId, noor.personId],
     );
-    expect(rows.map(({ occasion }) => occasion.split(':').slice(2).join(':')).sort()).toEqual([
-      'emergency',
-      'emergency:circulation',
-    ]);
+    expect(rows.map(({ occasion }) => occasion.split(':')[2]).sort()).toEqual(['alert', 'check-in']);
   });
 });
 
@@ -210,4 +207,85 @@ describe('what the patient is told of an alert', () => {
       ).rowCount,
     ).toBe(0);
   });
+});
+
+describe('a tick after the flag was closed', () => {
+  const close = (flagId: string) =>
+    desk.call('post', `/api/flags/${flagId}/close`, {
+      outcome: 'entered-by-mistake',
+      worthRaising: 'no',
+      note: '',
+    });
+  const mails = async () => {
+    const { rows } = await database.asSuperuser.query<{ count: number }>(
+      'select count(*)::int as count from notifications where person_id = $1',
+      [noor.personId],
+    );
+    return rows[0]?.count ?? 0;
+  };
+  const stateOf = async (flagId: string) => (await caseOf(flagId)).state;
+
+  it('opens it again and tells again, though the same was called a mistake before', async () => {
+    const first = await send({ answers: { danger: ['chest-or-breathing'] } });
+    await sweep();
+    await phone.call('post', `/api/alerts/${first.id}/mistakes`, {
+      id: randomUUID(),
+      answeredAt: new Date().toISOString(),
+    });
+    const flagId = (await flagsOfPatient())[0]!.id;
+    expect((await close(flagId)).status).toBe(200);
+    const before = await mails();
+
+    await send({ checkInId: first.checkInId, answers: { danger: ['chest-or-breathing'] } });
+    await sweep();
+    expect(await stateOf(flagId)).toBe('open');
+    expect(await mails()).toBe(before + 1);
+  });
+
+  it('opens it again when the same rule now says something worse', async () => {
+    const low = { symptoms: ['low-mood' as const] };
+    const { checkInId } = await send({ answers: { ...low, selfHarm: 'not-sure' } });
+    await sweep();
+    const flagId = (await flagsOfPatient())[0]!.id;
+    await close(flagId);
+    await send({ checkInId, answers: { ...low, selfHarm: 'yes' } });
+    await sweep();
+    expect(await stateOf(flagId)).toBe('open');
+    expect((await caseOf(flagId)).reasons.map(({ title }) => title)).toContain('Thoughts of self-harm');
+  });
+});
+
+it('is not told as seen by a look that came before it', async () => {
+  const first = await send();
+  await sweep();
+  const flagId = (await flagsOfPatient())[0]!.id;
+  await desk.call('post', `/api/flags/${flagId}/seen`);
+  const seenOf = async (id: string) =>
+    ((await phone.call('get', `/api/alerts/${id}`)).body as AlertReceipt).seen;
+  expect(await seenOf(first.id)).toMatchObject({ by: 'Noor Haddad' });
+
+  const second = await send({ checkInId: first.checkInId, answers: { danger: ['bleeding', 'cold-hand'] } });
+  expect(await seenOf(second.id)).toBeNull();
+  await sweep();
+  expect(await seenOf(second.id)).toBeNull();
+  expect((await phone.call('get', '/api/today')).body).toMatchObject({ openFlag: { seenBy: null } });
+  await desk.call('post', `/api/flags/${flagId}/seen`);
+  expect(await seenOf(second.id)).toMatchObject({ by: 'Noor Haddad' });
+});
+
+it('keeps what it said when the finished check-in says something milder', async () => {
+  const { checkInId } = await send({
+    answers: {
+      danger: ['chest-or-breathing', 'fainted-or-coughed-blood'],
+      chestWhen: 'now',
+      faintedWhen: 'now',
+    },
+  });
+  await sweep();
+  await finish(checkInId, { answers: { danger: ['chest-or-breathing'], chestWhen: 'earlier' } });
+  await sweep();
+  const [flag] = await flagsOfPatient();
+  expect(flag).toMatchObject({ urgency: 'emergency' });
+  const { reasons } = await caseOf(flag!.id);
+  expect(reasons[0]?.title).toContain('Fainted or coughed up blood, now');
 });

@@ -183,7 +183,7 @@ describe('a flag that was closed after the tick alone', () => {
     const { flags } = await round();
     expect(flags).toMatchObject([{ id: flagId, state: 'open', claimedBy: null, urgency: 'emergency' }]);
     const flag = (await desk.call('get', `/api/flags/${flagId}`)).body as FlagCase;
-    expect(flag.events.map(({ kind }) => kind)).toEqual(['raised', 'closed', 'raised-higher']);
+    expect(flag.events.map(({ kind }) => kind)).toEqual(['raised', 'closed', 'raised-again']);
     expect(flag.outcome).toBeNull();
     const { rows } = await database.asSuperuser.query(
       `select 1 from notifications where person_id = $1 and occasion like 'flag:' || $2 || ':%'`,

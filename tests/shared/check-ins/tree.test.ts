@@ -104,7 +104,12 @@ describe('the question tree', () => {
           ? screen.choices.map(({ textKey }) => textKey)
           : [];
     return [...keys, ...choices]
-      .map((key) => filled(textAt({ 'check-in': checkInWords }, key) ?? '', { since: 'since Friday' }))
+      .map((key) =>
+        filled(textAt({ 'check-in': checkInWords }, key) ?? '', {
+          since: 'since Friday',
+          crisisNumber: '988',
+        }),
+      )
       .map((text) => (/[.?!]$/.test(text) ? text : `${text}.`))
       .join(' ');
   };

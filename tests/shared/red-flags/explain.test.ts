@@ -31,7 +31,7 @@ describe('a finding in words for clinicians', () => {
     ['Chest pain or trouble breathing, time not answered', { danger: ['chest-or-breathing'] }, []],
     ['Pain 6, up 2.3 on the mean of the last 3', { painNow: 6 }, [3, 4, 4]],
     [
-      'Wound fluid, colour yellow, thickness thick',
+      'Wound fluid, color yellow, thickness thick',
       { symptoms: ['wound-fluid'], woundColour: 'yellow', woundThickness: 'thick' },
       [],
     ],
@@ -47,12 +47,12 @@ describe('a finding in words for clinicians', () => {
     expect(titleOf(answers, { usually })).toBe(title);
   });
 
-  test('says the answer beside the usual, the day, the rule, its version and its source', () => {
+  test('says the answer beside the usual, the day and what the rule looks for, and gives version and source apart', () => {
     const [finding] = findingsOf({ painNow: 8, symptoms: ['fall'] }, { day: 31, usually: [3, 3, 3] });
     expect(explain(finding!)).toEqual({
       title: 'Fall; pain 8, usual 3',
       sentence:
-        'Day 31. Fall with pain up 2 or more or said to hurt more since, lost use, changed shape, or legs that do not bear. Rule fall-with-injury, version 1.',
+        'Day 31. Fall with pain up 2 or more or said to hurt more since, lost use, changed shape, or legs that do not bear.',
       source: 'Default of ours. The change of 2 points: Farrar et al., Pain 2001;94:149-158, from memory.',
       ruleVersion: 1,
     });
@@ -64,6 +64,13 @@ describe('a finding in words for clinicians', () => {
       { day: 31, usually: [3, 3, 3] },
     );
     expect(explain(finding!).sentence).toMatch(/^Day 31\. Pain now 4, usual 3\. /);
+  });
+
+  test('leaves pain out of the sentence where it was not asked', () => {
+    const [finding] = findingsOf({ symptoms: ['wound-opened'] }, { day: 31 });
+    expect(explain(finding!).sentence).toBe(
+      'Day 31. Fluid that is colored and thick, the published sign of pus, or the wound has opened.',
+    );
   });
 
   test('never shows a code, a gap or a missing value', () => {
