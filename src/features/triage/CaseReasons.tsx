@@ -15,7 +15,10 @@ export function CaseReasons({ flag, timeZone, nowMs }: Props) {
       <CalledMistake flag={flag} timeZone={timeZone} nowMs={nowMs} />
       <ul>
         {flag.reasons.map((reason) => (
-          <li key={`${reason.code} ${reason.title}`} className="border-b border-wire py-3 first:pt-1 last:border-b-0">
+          <li
+            key={`${reason.code} ${reason.title}`}
+            className="border-b border-wire py-3 first:pt-1 last:border-b-0"
+          >
             <h4 className="flex flex-wrap items-center gap-x-3 font-bold">
               {reason.title}
               <span className="text-sm">
