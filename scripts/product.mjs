@@ -27,6 +27,17 @@ function address() {
   return { port, host, publicUrl: given.replace(/\/+$/, '') };
 }
 
+const LOOPBACK = /^(localhost|127(\.\d+){3}|\[?::1\]?)$/;
+
+/** The demo's passwords are printed and published: it goes beyond this machine only where that was asked for. */
+function requireDemoAtHome({ host, publicUrl }) {
+  if (process.env.DEMO !== undefined) return;
+  if (LOOPBACK.test(host) && LOOPBACK.test(new URL(publicUrl).hostname)) return;
+  throw new Stop(
+    'The demo has published passwords and an open outbox, and HOST or PUBLIC_URL leads beyond this machine. Set DEMO=off, or DEMO=on to show it all the same.',
+  );
+}
+
 async function requireFreePort({ port, host }) {
   if (await portIsFree(port, host)) return;
   throw new Stop(
@@ -70,6 +81,7 @@ export async function runProduct({ watched }) {
   if (!demo && process.env.SMTP_URL === undefined) {
     throw new Stop('With DEMO=off set SMTP_URL, the address of the mail server to send through.');
   }
+  requireDemoAtHome({ host, publicUrl });
   const release = await takeRunLock();
   try {
     await requireFreePort({ port, host });

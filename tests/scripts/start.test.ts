@@ -156,6 +156,10 @@ test('a port that another program has is named in one line, and nothing is start
 test.each([
   [{ PORT: '70000' }, 'PORT must be a whole number from 1 to 65535, not "70000".'],
   [{ PUBLIC_URL: 'here' }, 'PUBLIC_URL must be an address such as http://localhost:4600, not "here".'],
+  [
+    { HOST: '0.0.0.0' },
+    'The demo has published passwords and an open outbox, and HOST or PUBLIC_URL leads beyond this machine. Set DEMO=off, or DEMO=on to show it all the same.',
+  ],
   [{ DEMO: 'off' }, 'With DEMO=off set SMTP_URL, the address of the mail server to send through.'],
 ])('a setting that does not fit is refused in one line: %o', async (env, line) => {
   const launch = await launchProduct(4600, { env });
