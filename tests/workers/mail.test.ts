@@ -237,14 +237,11 @@ describe('the worker', () => {
 });
 
 it('sends an emergency’s mail before what was waiting already, and drains the rest without a pause', async () => {
-  const person = { kind: 'system', clinicId } as const;
-  await withTx(database.pools.app, person, async (tx) => {
-    for (let n = 0; n < 40; n += 1) {
-      const occasion = { kind: 'new-message', occasion: `waiting:${n}`, path: '/messages' } as const;
-      await notify(tx, clinicId, [noor.personId], occasion, new Date());
+  await withTx(database.pools.app, { kind: 'system', clinicId }, async (tx) => {
+    for (let n = 0; n <= 40; n += 1) {
+      const kind = n === 40 ? 'new-emergency' : 'new-message';
+      await notify(tx, clinicId, [noor.personId], { kind, occasion: `waiting:${n}`, path: '/' }, new Date());
     }
-    const occasion = { kind: 'new-emergency', occasion: 'emergency', path: '/round' } as const;
-    await notify(tx, clinicId, [noor.personId], occasion, new Date());
   });
   await startWorker();
   // At one mail a second, as the queue polls, forty would take forty seconds.

@@ -18,9 +18,7 @@ beforeAll(async () => {
   database = await cloneDatabase();
 });
 
-afterAll(async () => {
-  await database.drop();
-});
+afterAll(() => database.drop());
 
 const read = async <T extends Record<string, unknown>>(text: string, values: unknown[] = []): Promise<T[]> =>
   (await database.asSuperuser.query<T>(text, values)).rows;
