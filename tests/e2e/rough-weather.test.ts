@@ -122,3 +122,32 @@ test('after sign-out neither the back button nor the address shows anything', as
   await page.goto('/today');
   await expect(page.getByRole('heading', { name: 'Sign in' })).toBeVisible();
 });
+
+test('a check-in that is not sent is asked about before signing out', async ({ page, product }) => {
+  await signIn(page, product, 'Hal Brandvold');
+  await page.goto('/something-new');
+  await tick(page, 'Hand cold, pale or blue');
+  await page.goto('/today');
+  await page.getByRole('button', { name: /Your account/ }).click();
+  await page.getByRole('button', { name: 'Sign out' }).click();
+  await expect(page.getByRole('alertdialog', { name: 'Your check-in is not sent' })).toBeVisible();
+  await page.getByRole('button', { name: 'Stay' }).click();
+  await expect(page).toHaveURL(/today/);
+});
+
+test('“None of these” is in sight on the danger screen of a phone, above the emergency line', async ({
+  page,
+  product,
+}) => {
+  await signIn(page, product, 'Gwen Thackeray');
+  await page.goto('/check-in');
+  await page.getByRole('button', { name: '2', exact: true }).click();
+  await page.getByRole('heading', { name: /worst pain/ }).waitFor();
+  await page.getByRole('button', { name: '3', exact: true }).click();
+  await page.getByRole('button', { name: 'The same' }).click();
+  await page.getByRole('button', { name: 'As advised' }).click();
+  await page.getByRole('heading', { name: /Any of these/ }).waitFor();
+  const none = await page.getByRole('button', { name: 'None of these' }).boundingBox();
+  const line = await page.getByText('Emergency? Call 911', { exact: false }).boundingBox();
+  expect((none?.y ?? NaN) + (none?.height ?? NaN)).toBeLessThanOrEqual(line?.y ?? NaN);
+});
