@@ -1,6 +1,6 @@
 import i18next from 'i18next';
 import { initReactI18next } from 'react-i18next';
-import common from '#src/locales/en/common.json';
+import app from '#src/locales/en/app.json';
 
 const languages = ['en'] as const;
 type Language = (typeof languages)[number];
@@ -8,7 +8,7 @@ type Language = (typeof languages)[number];
 /** Each file of words is a chunk of its own, loaded with the screens that need it; the shell's are always there. */
 const files = import.meta.glob<{ default: Record<string, unknown> }>([
   '../locales/*/*.json',
-  '!../locales/*/common.json',
+  '!../locales/*/app.json',
 ]);
 
 /** Starts with the words of the shell; `loadWords` brings the rest. */
@@ -18,9 +18,9 @@ export async function startI18n(): Promise<void> {
   await i18next.use(initReactI18next).init({
     lng: 'en' satisfies Language,
     supportedLngs: languages,
-    ns: ['common'],
-    defaultNS: 'common',
-    resources: { en: { common } },
+    ns: ['app'],
+    defaultNS: 'app',
+    resources: { en: { app } },
     interpolation: { escapeValue: false },
     returnNull: false,
   });

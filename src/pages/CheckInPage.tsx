@@ -26,7 +26,7 @@ export function SomethingNewPage() {
 
 /** Takes up the draft of today, or begins a new one with what the rules read besides the answers. */
 function Opening({ mode }: { mode: CheckInMode }) {
-  const { t } = useTranslation(['check-in-screens', 'common']);
+  const { t } = useTranslation(['check-in-screens', 'app']);
   const me = useMe();
   const heading = usePageHeading(t(`title.${mode}`));
   const context = useCheckInContext();
@@ -52,7 +52,7 @@ function Opening({ mode }: { mode: CheckInMode }) {
           <ErrorState
             title={t('failed.title')}
             retry={{
-              label: t('common:tryAgain'),
+              label: t('app:tryAgain'),
               onRetry: () => void context.refetch(),
               busy: context.isFetching,
             }}

@@ -17,7 +17,7 @@ import { formatDate } from '#src/lib/format.ts';
 
 /** The whole plan by phase, with what is in force and what changed. */
 export function MyPlanPage() {
-  const { t } = useTranslation(['my-plan', 'plan', 'common']);
+  const { t } = useTranslation(['my-plan', 'plan', 'app']);
   const heading = usePageHeading(t('title'));
   const plan = useMyPlan();
   const { data } = plan;
@@ -29,7 +29,7 @@ export function MyPlanPage() {
         <ErrorState
           title={t('failed.title')}
           retry={{
-            label: t('common:tryAgain'),
+            label: t('app:tryAgain'),
             onRetry: () => void plan.refetch(),
             busy: plan.isFetching,
           }}

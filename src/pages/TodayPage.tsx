@@ -47,7 +47,7 @@ export function TodayPage() {
         <ErrorState
           title={t('failed.title')}
           retry={{
-            label: t('tryAgain', { ns: 'common' }),
+            label: t('tryAgain', { ns: 'app' }),
             onRetry: () => void today.refetch(),
             busy: today.isFetching,
           }}
@@ -55,7 +55,7 @@ export function TodayPage() {
           {t('failed.help')}
         </ErrorState>
       ) : null}
-      {today.isPending ? <LoadingState label={t('loading', { ns: 'common' })} lines={8} /> : null}
+      {today.isPending ? <LoadingState label={t('loading', { ns: 'app' })} lines={8} /> : null}
     </>
   );
 }

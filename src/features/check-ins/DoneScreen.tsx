@@ -32,7 +32,7 @@ const looks: Record<Finding['urgency'], { shape: SignShapeName; ground: string }
 
 /** After sending: what was found on the device, and what happens next, from the clinic's hours. */
 export function DoneScreen({ receipt, findings, firstName, clinic }: Props) {
-  const { t } = useTranslation(['check-in-screens', 'rules', 'common']);
+  const { t } = useTranslation(['check-in-screens', 'rules', 'app']);
   const heading = useRef<HTMLHeadingElement>(null);
   const nowMs = useNowMs();
   useEffect(() => {
@@ -73,8 +73,8 @@ export function DoneScreen({ receipt, findings, firstName, clinic }: Props) {
         </LinkButton>
       </main>
       <BottomDock>
-        <EmergencyLine label={t('common:emergency.label')} href={telephoneHref(clinic.emergencyNumber)}>
-          {t('common:emergency.short', { number: clinic.emergencyNumber })}
+        <EmergencyLine label={t('app:emergency.label')} href={telephoneHref(clinic.emergencyNumber)}>
+          {t('app:emergency.short', { number: clinic.emergencyNumber })}
         </EmergencyLine>
       </BottomDock>
     </div>

@@ -16,7 +16,7 @@ type Props = {
 
 /** One's threads, in the order that the server gives: those that wait on us first. */
 export function ThreadList({ side, selectedId = null }: Props) {
-  const { t } = useTranslation(['threads', 'common']);
+  const { t } = useTranslation(['threads', 'app']);
   const { data: threads, error, isFetching, refetch } = useThreads();
   const refusal = useRefusal(error);
   if (!threads) {
@@ -26,7 +26,7 @@ export function ThreadList({ side, selectedId = null }: Props) {
         {error ? (
           <ErrorState
             title={t('list.failed')}
-            retry={{ label: t('common:tryAgain'), onRetry: () => void refetch(), busy: isFetching }}
+            retry={{ label: t('app:tryAgain'), onRetry: () => void refetch(), busy: isFetching }}
           >
             {refusal}
           </ErrorState>

@@ -20,7 +20,7 @@ type Props = { threadId: string; side: Side };
 
 /** One thread, live: its messages and where one writes. On a patient's page it brings the first heading. */
 export function ThreadView({ threadId, side }: Props) {
-  const { t } = useTranslation(['threads', 'common']);
+  const { t } = useTranslation(['threads', 'app']);
   const thread = useThread(threadId);
   const messages = useMessages(threadId);
   const error = thread.error ?? messages.error;
@@ -43,7 +43,7 @@ export function ThreadView({ threadId, side }: Props) {
     <ErrorState
       title={t('thread.failed')}
       retry={{
-        label: t('common:tryAgain'),
+        label: t('app:tryAgain'),
         onRetry: () => void retry(),
         busy: thread.isFetching || messages.isFetching,
       }}
