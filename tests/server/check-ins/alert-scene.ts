@@ -14,7 +14,7 @@ import { cloneDatabase, silentLog, type TestDatabase } from '#tests/support/data
 import { startWeb, type TestBrowser, type TestWeb } from '#tests/support/web.ts';
 import { alertBody, checkInBody } from './bodies.ts';
 
-export type AlertScene = {
+type AlertScene = {
   database: TestDatabase;
   web: TestWeb;
   clinicId: string;
