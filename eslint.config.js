@@ -55,6 +55,11 @@ export default tseslint.config(
   },
   {
     files: ['**/*.{js,mjs}'],
+    ignores: ['public/**'],
     languageOptions: { globals: globals.node },
+  },
+  {
+    files: ['public/**/*.js'],
+    languageOptions: { globals: globals.serviceworker },
   },
 );

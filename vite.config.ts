@@ -2,6 +2,7 @@ import tailwindcss from '@tailwindcss/vite';
 import react from '@vitejs/plugin-react';
 import { join } from 'node:path';
 import { defineConfig } from 'vite';
+import type { Plugin } from 'vite';
 
 /** The web's address behind Vite in development; a build does not use it. */
 const webUrl = process.env.WEB_URL ?? 'http://127.0.0.1:4601';
@@ -26,10 +27,30 @@ function reachedFrom(roots: readonly string[], graph: ModuleGraph): Set<string> 
 
 /** Not needed by it, though the index of its library names it; an icon of its own screens gets there all the same. */
 const notFirst =
-  /react-i18next\/dist\/es\/Trans|html-parse-stringify|IcuTrans|lucide-react.*\/icons\/|mutationObserver|useMutation/;
+  /react-i18next\/dist\/es\/Trans|html-parse-stringify|IcuTrans|lucide-react.*\/icons\/|mutationObserver|useMutation|infiniteQueryObserver|useInfiniteQuery/;
+
+const routerFile = (name: string): string =>
+  join(import.meta.dirname, `node_modules/react-router/dist/production/${name}.mjs`);
+
+/**
+ * The router ships a production build that its package names to nobody, and the other one explains to developers
+ * what they do wrong. Patients need not load that.
+ */
+const productionRouter: Plugin = {
+  name: 'production-router',
+  apply: 'build',
+  config: () => ({
+    resolve: {
+      alias: [
+        { find: /^react-router$/, replacement: routerFile('index') },
+        { find: /^react-router\/dom$/, replacement: routerFile('dom-export') },
+      ],
+    },
+  }),
+};
 
 export default defineConfig({
-  plugins: [react(), tailwindcss()],
+  plugins: [productionRouter, react(), tailwindcss()],
   define: { __BUILD_ID__: JSON.stringify(process.env.BUILD_ID ?? 'development') },
   build: {
     outDir: 'dist/client',
@@ -64,6 +85,7 @@ export default defineConfig({
     proxy: {
       '/api': webUrl,
       '/outbox': webUrl,
+      '/gateway': webUrl,
       '/healthz': webUrl,
       '/readyz': webUrl,
       '/socket.io': { target: webUrl, ws: true },

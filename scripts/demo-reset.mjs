@@ -19,9 +19,9 @@ await main(async () => {
   try {
     const { ownerUrl } = started ?? (given ? givenDatabase() : clusterUrls());
     if (lock.release) await migrate(use.migrate, ownerUrl);
-    const accounts = await demoAct(use.demo, 'reset', ownerUrl);
+    const demo = await demoAct(use.demo, 'reset', ownerUrl);
     say('The demo clinic is as on its first day.');
-    showAccounts(accounts);
+    showAccounts(demo);
   } finally {
     await started?.stop();
     lock.release?.();

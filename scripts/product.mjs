@@ -1,3 +1,4 @@
+import { createHash } from 'node:crypto';
 import { join } from 'node:path';
 import { setTimeout as wait } from 'node:timers/promises';
 import { givenDatabase, migrate, startDatabase } from './database.mjs';
@@ -64,14 +65,30 @@ async function prepareDemo(program, ownerUrl, tell, signal) {
   return demoAct(program, 're-anchor', ownerUrl, signal);
 }
 
-async function startFakes(args, add, signal) {
+/** Without the demo every gateway is real and named by the environment, which the parts are handed as it is. */
+const NO_FAKES = { OUTBOX_URL: undefined, PUSH_FAKE_URL: undefined, TWILIO_API_URL: undefined };
+
+/** Starts the fakes, and gives what makes web and worker speak to them. */
+async function startFakes(args, { gatewayToken }, add, signal) {
   const smtpPort = await freePort();
   const outboxPort = await freePort();
-  const env = { SMTP_PORT: smtpPort, OUTBOX_PORT: outboxPort, FAKES_DIR: localFolder('fakes') };
+  const account = {
+    TWILIO_ACCOUNT_SID: `AC${createHash('sha256').update(gatewayToken).digest('hex').slice(0, 32)}`,
+    TWILIO_AUTH_TOKEN: gatewayToken,
+  };
+  const folder = localFolder('fakes');
+  const env = { SMTP_PORT: smtpPort, OUTBOX_PORT: outboxPort, FAKES_DIR: folder, ...account };
   add(startPart({ name: 'fakes', args, env }));
   const outboxUrl = `http://127.0.0.1:${outboxPort}`;
   await answers(outboxUrl, { signal });
-  return { SMTP_URL: `smtp://127.0.0.1:${smtpPort}`, OUTBOX_URL: outboxUrl };
+  return {
+    ...account,
+    SMTP_URL: `smtp://127.0.0.1:${smtpPort}`,
+    OUTBOX_URL: outboxUrl,
+    PUSH_FAKE_URL: outboxUrl,
+    TWILIO_API_URL: outboxUrl,
+    TWILIO_FROM: '+12025550100',
+  };
 }
 
 /** Everything from the bare checkout to the ready line, then until it is ended. Returns the exit code. */
@@ -94,16 +111,18 @@ export async function runProduct({ watched }) {
       const use = programs(watched);
       tell('Migrating …');
       await migrate(use.migrate, ownerUrl, signal);
-      const accounts = demo ? await prepareDemo(use.demo, ownerUrl, tell, signal) : [];
-      const mail = demo
-        ? await startFakes(use.fakes, add, signal)
-        : { SMTP_URL: process.env.SMTP_URL, OUTBOX_URL: undefined };
+      const filled = demo ? await prepareDemo(use.demo, ownerUrl, tell, signal) : null;
+      // What an earlier start with the demo left has published passwords.
+      if (!demo) await demoAct(use.demo, 'remove', ownerUrl, signal);
+      const gateways = demo ? await startFakes(use.fakes, made, add, signal) : NO_FAKES;
       const shared = {
         APP_DATABASE_URL: appUrl,
         GATE_DATABASE_URL: gateUrl,
-        ...mail,
+        ...gateways,
         NODE_ENV: watched ? 'development' : 'production',
         PUBLIC_URL: publicUrl,
+        TOKEN_SECRET: made.tokenSecret,
+        VAPID_PUBLIC_KEY: made.vapidPublicKey,
         BUILD_ID: watched ? 'development' : builtId(),
       };
       const webPort = watched ? await freePort() : port;
@@ -119,13 +138,20 @@ export async function runProduct({ watched }) {
             HOST: webHost,
             SESSION_SECRET: made.sessionSecret,
             AUDIT_SECRET: made.auditSecret,
+            SEAL_SECRET: made.sealSecret,
+            ...(filled ? { DEMO_AUTHENTICATORS: JSON.stringify(filled.authenticators) } : {}),
             CLIENT_DIR: join(root, 'dist/client'),
           },
         }),
       );
       const webUrl = `http://${reachable(webHost)}:${webPort}`;
       await answers(`${webUrl}/healthz`, { signal });
-      const worker = startPart({ name: 'worker', args: use.worker, echo: watched, env: shared });
+      const worker = startPart({
+        name: 'worker',
+        args: use.worker,
+        echo: watched,
+        env: { ...shared, VAPID_PRIVATE_KEY: made.vapidPrivateKey },
+      });
       const workerReady = worker.says('worker ready');
       add(worker);
       await Promise.race([workerReady, tooLate(worker, signal)]);
@@ -133,8 +159,8 @@ export async function runProduct({ watched }) {
       await answers(`${webUrl}/readyz`, { signal });
       if (watched) await startVite(add, { port, host, webUrl, signal });
       say(`\nEspalier is ready at ${publicUrl}`);
-      if (demo) {
-        showAccounts(accounts);
+      if (filled) {
+        showAccounts(filled);
         say(`\nOutbox: ${publicUrl}/outbox`);
       }
       say(`Logs: ${join(local, 'logs')}. Ctrl-C ends everything.`);

@@ -1,4 +1,4 @@
-import { randomBytes } from 'node:crypto';
+import { createECDH, randomBytes } from 'node:crypto';
 import { chmodSync, linkSync, readFileSync, renameSync, rmSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { localFolder } from './places.mjs';
@@ -11,7 +11,22 @@ const NAMES = [
   'gatePassword',
   'sessionSecret',
   'auditSecret',
+  'tokenSecret',
+  'sealSecret',
+  'gatewayToken',
 ];
+
+/** A key pair by which browsers know this server for push (RFC 8292): P-256, base64url. */
+function vapidKeys() {
+  const pair = createECDH('prime256v1');
+  pair.generateKeys();
+  // A private key may begin with zeros, which Node leaves out.
+  const privateKey = Buffer.concat([Buffer.alloc(32), pair.getPrivateKey()]).subarray(-32);
+  return {
+    vapidPublicKey: pair.getPublicKey('base64url'),
+    vapidPrivateKey: privateKey.toString('base64url'),
+  };
+}
 
 /**
  * The secrets of this checkout, made once and readable by its user alone.
@@ -28,8 +43,11 @@ export function secrets() {
     if (error.code !== 'ENOENT') throw error;
   }
   const missing = NAMES.filter((name) => !kept[name]);
-  if (missing.length === 0) return kept;
-  const made = Object.fromEntries(missing.map((name) => [name, randomBytes(32).toString('hex')]));
+  if (missing.length === 0 && kept.vapidPublicKey) return kept;
+  const made = {
+    ...Object.fromEntries(missing.map((name) => [name, randomBytes(32).toString('hex')])),
+    ...(kept.vapidPublicKey ? {} : vapidKeys()),
+  };
   const all = { ...kept, ...made };
   const draft = `${path}.${process.pid}`;
   writeFileSync(draft, `${JSON.stringify(all, null, 2)}\n`, { mode: 0o600 });

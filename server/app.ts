@@ -6,8 +6,10 @@ import type { Pools } from './db/pools.ts';
 import { checkPassword } from './features/accounts/service.ts';
 import { readLastBeat } from './features/clinic/worker-health.ts';
 import { clientFiles } from './http/client-files.ts';
+import { gatewayHooks, type HookTokens } from './http/gateway-hooks.ts';
 import { healthRouter } from './http/health.ts';
 import { mount } from './http/mount.ts';
+import type { Site } from './http/site.ts';
 import { openApiDocument } from './http/openapi.ts';
 import { outboxRouter } from './http/outbox.ts';
 import { configurePassport } from './http/passport.ts';
@@ -22,9 +24,14 @@ export type AppOptions = {
   publicUrl: string;
   trustProxy?: string;
   sessionSecret: string;
+  tokenSecret: string;
+  sealSecret: string;
+  vapidPublicKey: string;
   buildId: string;
   clientDir?: string | undefined;
   outboxUrl?: string | undefined;
+  hookTokens?: HookTokens;
+  demoAuthenticators?: readonly { name: string; secret: string }[];
 };
 
 const bodyLimit = '512kb';
@@ -80,8 +87,8 @@ export const createApp = (options: AppOptions): { app: Express; identity: Identi
   const { origin, protocol } = new URL(publicUrl);
   const secure = protocol === 'https:';
   const lastBeat = () => readLastBeat(pools.gate);
-  const authenticator = configurePassport(pools, clock, (email, password) =>
-    checkPassword(pools.gate, { email, password }, clock()),
+  const authenticator = configurePassport(pools, clock, (email, password, from) =>
+    checkPassword(pools.gate, { email, password, from }, clock()),
   );
   const keys = { gate: pools.gate, secret: sessionSecret, authenticator };
   const identity: Identity = {
@@ -119,11 +126,22 @@ export const createApp = (options: AppOptions): { app: Express; identity: Identi
     res.json(openApiDocument(routes));
   });
   api.use(express.json({ limit: bodyLimit }), identity.session, identity.initialize, identity.restore);
-  mount(api, routes, { pools, keys, clock, publicOrigin: origin });
+  const site: Site = {
+    gate: pools.gate,
+    publicUrl: publicUrl.replace(/\/+$/, ''),
+    tokenSecret: options.tokenSecret,
+    sealSecret: options.sealSecret,
+    vapidPublicKey: options.vapidPublicKey,
+  };
+  mount(api, routes, { pools, keys, clock, publicOrigin: origin, site });
   api.use('/api', unknownApiPath);
 
   app.use((req, res, next) => (req.path.startsWith('/api/') ? api(req, res, next) : next()));
-  if (options.outboxUrl) app.use(outboxRouter(options.outboxUrl));
+  app.use(gatewayHooks({ pools, clock, publicUrl, tokens: options.hookTokens ?? {} }));
+  if (options.outboxUrl) {
+    const authenticators = options.demoAuthenticators ?? [];
+    app.use(outboxRouter({ fakesUrl: options.outboxUrl, publicOrigin: origin, authenticators, clock }));
+  }
   if (options.clientDir) app.use(clientFiles(options.clientDir));
   app.use(answerProblems(log));
   return { app, identity };

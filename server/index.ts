@@ -25,9 +25,14 @@ const { app, identity } = createApp({
   publicUrl: env.PUBLIC_URL,
   trustProxy: env.TRUST_PROXY,
   sessionSecret: env.SESSION_SECRET,
+  tokenSecret: env.TOKEN_SECRET,
+  sealSecret: env.SEAL_SECRET,
+  vapidPublicKey: env.VAPID_PUBLIC_KEY,
   buildId: env.BUILD_ID,
   clientDir: env.CLIENT_DIR,
   outboxUrl: env.OUTBOX_URL,
+  hookTokens: { telephone: env.TWILIO_AUTH_TOKEN, mailBounces: env.MAIL_BOUNCE_TOKEN },
+  demoAuthenticators: env.DEMO_AUTHENTICATORS,
 });
 const server = createServer(app);
 const sockets = openSockets(server, { pools, clock, publicUrl: env.PUBLIC_URL, identity, log });

@@ -1,117 +1,102 @@
-import type { ComponentType } from 'react';
 import { createBrowserRouter } from 'react-router-dom';
-import { clinicianRoles } from '#shared/access/permissions.ts';
+import type { PatchRoutesOnNavigationFunction } from 'react-router-dom';
 import { ErrorPage } from './app/ErrorPage.tsx';
 import { HomePage } from './app/HomePage.tsx';
+import { RequireRecord } from './app/RequireRecord.tsx';
 import { RequireRole } from './app/RequireRole.tsx';
 import { RootLayout } from './app/RootLayout.tsx';
+import { screen } from './app/screen.ts';
 import { Splash } from './app/Splash.tsx';
 import { checkInWords } from './features/check-ins/word-files.ts';
-import { loadWords } from './lib/i18n.ts';
 
-/** A screen whose code and files of words are fetched together, when it is gone to. */
-const screen =
-  (load: () => Promise<ComponentType>, words: readonly string[] = []) =>
-  async () => {
-    const [Component] = await Promise.all([load(), loadWords(words)]);
-    return { Component };
-  };
+const clinicAddress = /^\/(round|caseload|clinic|letters)(\/|$)/;
+const accessAddress = /^\/(invitation|start|forgot-password|reset-password|confirm-email|second-factor)$/;
+const patientAddress = /^\/(account|caring|messages)(\/|$)/;
+
+/** These addresses are fetched by whoever goes to one: the first load of Today has no room for them. */
+const addRoutes: PatchRoutesOnNavigationFunction = async ({ path, patch }) => {
+  if (clinicAddress.test(path)) patch('root', (await import('./clinic-routes.tsx')).clinicRoutes);
+  if (accessAddress.test(path)) patch('root', (await import('./access-routes.tsx')).accessRoutes);
+  if (patientAddress.test(path)) {
+    const { caringRoutes, patientRoutes } = await import('./patient-routes.tsx');
+    patch('patient-side', caringRoutes);
+    patch('patient-shell', patientRoutes);
+  }
+};
 
 /** The addresses of the application. Each screen is a chunk of its own. */
 export const createRouter = () =>
-  createBrowserRouter([
-    {
-      element: <RootLayout />,
-      errorElement: <ErrorPage />,
-      hydrateFallbackElement: <Splash />,
-      children: [
-        { path: '/', element: <HomePage /> },
-        {
-          path: '/sign-in',
-          lazy: screen(async () => (await import('./pages/SignInPage.tsx')).SignInPage, ['accounts']),
-        },
-        {
-          element: <RequireRole anyOf={['patient']} />,
-          children: [
-            {
-              lazy: screen(async () => (await import('./app/shells/PatientShell.tsx')).PatientShell),
-              children: [
-                {
-                  path: '/today',
-                  lazy: screen(
-                    async () => (await import('./pages/TodayPage.tsx')).TodayPage,
-                    ['today', 'plan'],
-                  ),
-                },
-                {
-                  path: '/plan',
-                  lazy: screen(
-                    async () => (await import('./pages/MyPlanPage.tsx')).MyPlanPage,
-                    ['my-plan', 'plan'],
-                  ),
-                },
-                {
-                  path: '/messages',
-                  lazy: screen(
-                    async () => (await import('./pages/MessagesPage.tsx')).MessagesPage,
-                    ['messages', 'threads'],
-                  ),
-                },
-                {
-                  path: '/messages/new',
-                  lazy: screen(
-                    async () => (await import('./pages/NewMessagePage.tsx')).NewMessagePage,
-                    ['messages', 'threads'],
-                  ),
-                },
-                {
-                  path: '/messages/:threadId',
-                  lazy: screen(
-                    async () => (await import('./pages/ThreadPage.tsx')).ThreadPage,
-                    ['messages', 'threads'],
-                  ),
-                },
-              ],
-            },
-            {
-              path: '/check-in',
-              lazy: screen(async () => (await import('./pages/CheckInPage.tsx')).CheckInPage, checkInWords),
-            },
-            {
-              path: '/something-new',
-              lazy: screen(
-                async () => (await import('./pages/CheckInPage.tsx')).SomethingNewPage,
-                checkInWords,
-              ),
-            },
-          ],
-        },
-        {
-          element: <RequireRole anyOf={clinicianRoles} />,
-          children: [
-            {
-              lazy: screen(async () => (await import('./app/shells/ClinicShell.tsx')).ClinicShell),
-              children: [
-                {
-                  path: '/round/:flagId?',
-                  lazy: screen(async () => (await import('./pages/MorningRoundPage.tsx')).MorningRoundPage),
-                },
-                {
-                  path: '/clinic/messages/:threadId?',
-                  lazy: screen(
-                    async () => (await import('./pages/ClinicMessagesPage.tsx')).ClinicMessagesPage,
-                    ['threads'],
-                  ),
-                },
-              ],
-            },
-          ],
-        },
-        {
-          path: '/no-screens',
-          lazy: screen(async () => (await import('./pages/NoScreensPage.tsx')).NoScreensPage),
-        },
-        { path: '*', lazy: screen(async () => (await import('./pages/NotFoundPage.tsx')).NotFoundPage) },
-      ],
-    },
-  ]);
+  createBrowserRouter(
+    [
+      {
+        id: 'root',
+        element: <RootLayout />,
+        errorElement: <ErrorPage />,
+        hydrateFallbackElement: <Splash />,
+        children: [
+          { path: '/', element: <HomePage /> },
+          {
+            path: '/sign-in',
+            lazy: screen(async () => (await import('./pages/SignInPage.tsx')).SignInPage, ['accounts']),
+          },
+          {
+            id: 'patient-side',
+            element: <RequireRole anyOf={['patient', 'caregiver']} />,
+            children: [
+              {
+                element: <RequireRecord />,
+                children: [
+                  {
+                    id: 'patient-shell',
+                    lazy: screen(async () => (await import('./app/shells/PatientShell.tsx')).PatientShell),
+                    children: [
+                      {
+                        path: '/today',
+                        lazy: screen(
+                          async () => (await import('./pages/TodayPage.tsx')).TodayPage,
+                          ['today', 'plan'],
+                        ),
+                      },
+                      {
+                        path: '/plan',
+                        lazy: screen(
+                          async () => (await import('./pages/MyPlanPage.tsx')).MyPlanPage,
+                          ['my-plan', 'plan', 'plan-details'],
+                        ),
+                      },
+                    ],
+                  },
+                  {
+                    path: '/check-in',
+                    lazy: screen(
+                      async () => (await import('./pages/CheckInPage.tsx')).CheckInPage,
+                      checkInWords,
+                    ),
+                  },
+                  {
+                    path: '/something-new',
+                    lazy: screen(
+                      async () => (await import('./pages/CheckInPage.tsx')).SomethingNewPage,
+                      checkInWords,
+                    ),
+                  },
+                ],
+              },
+            ],
+          },
+          {
+            path: '/no-screens',
+            lazy: screen(
+              async () => (await import('./pages/NoScreensPage.tsx')).NoScreensPage,
+              ['nowhere', 'leaving'],
+            ),
+          },
+          {
+            path: '*',
+            lazy: screen(async () => (await import('./pages/NotFoundPage.tsx')).NotFoundPage, ['nowhere']),
+          },
+        ],
+      },
+    ],
+    { patchRoutesOnNavigation: addRoutes },
+  );

@@ -1,8 +1,8 @@
 import { assertSafeServer, closePools, openPools } from '#server/db/pools.ts';
 import { readWorkerEnv } from '#server/env.ts';
 import { createLog } from '#server/log.ts';
-import { openMailer } from '#server/notifications/mailer.ts';
 import { endWithParent } from '#server/process/parent.ts';
+import { openChannels } from './channels.ts';
 import { startWork } from './work.ts';
 
 // First of all, so that a start whose parent is gone ends too.
@@ -12,11 +12,10 @@ const env = readWorkerEnv(process.env);
 const log = createLog('worker', env.LOG_LEVEL);
 const pools = openPools({ app: env.APP_DATABASE_URL, gate: env.GATE_DATABASE_URL }, log);
 await assertSafeServer(pools);
-const mailer = openMailer({ smtpUrl: env.SMTP_URL, from: env.MAIL_FROM, publicUrl: env.PUBLIC_URL });
+const channels = openChannels(env);
 const work = await startWork({
   databaseUrl: env.APP_DATABASE_URL,
-  pools,
-  mailer,
+  tools: { pools, channels, tokenSecret: env.TOKEN_SECRET },
   clock: () => new Date(),
   log,
 });
@@ -29,7 +28,7 @@ const drain = async (): Promise<void> => {
   if (ending) return;
   ending = true;
   await work.stop();
-  mailer.close();
+  for (const channel of Object.values(channels)) channel.close();
   await closePools(pools);
   log.info('worker ended');
 };

@@ -1,60 +1,48 @@
 import { randomUUID } from 'node:crypto';
-import pg from 'pg';
 import PgBoss from 'pg-boss';
 import type { Logger } from 'pino';
-import type { Pools } from '#server/db/pools.ts';
+import { listenTo } from '#server/db/listener.ts';
 import { beat, heartbeatEveryMs } from '#server/features/clinic/worker-health.ts';
-import {
-  jobChannel,
-  jobPayloads,
-  queueOptions,
-  queueSchema,
-  type JobName,
-  type JobPayload,
-} from '#server/jobs/queues.ts';
-import type { Mailer } from '#server/notifications/mailer.ts';
+import { jobChannel, jobPayloads, queueSchema, type JobName, type JobPayload } from '#server/jobs/queues.ts';
+import type { DeliveryTools } from '#server/notifications/delivery.ts';
+import { createSender, type Sender } from '#server/notifications/sender.ts';
 import { evaluateAlertTask } from './tasks/evaluate-alert.ts';
 import { evaluateCheckInTask } from './tasks/evaluate-check-in.ts';
 import { sendNotificationTask } from './tasks/send-notification.ts';
+import { startTimedWork } from './timed.ts';
 
-type Task<Name extends JobName> = (payload: JobPayload<Name>, isLastTry: boolean) => Promise<void>;
+type Task<Name extends JobName> = (payload: JobPayload<Name>) => Promise<void>;
 type Tasks = { [Name in JobName]: Task<Name> };
 
 export type WorkOptions = {
   databaseUrl: string;
-  pools: Pools;
-  mailer: Mailer;
+  tools: DeliveryTools;
   clock: () => Date;
   log: Logger;
+  /** How many notifications may be on their way at once. */
+  sendAtOnce?: number;
 };
 
-const tasksOf = ({ pools, mailer, clock }: WorkOptions): Tasks => ({
+const tasksOf = ({ tools: { pools }, clock }: WorkOptions, sender: Sender): Tasks => ({
   'evaluate-check-in': (payload) => evaluateCheckInTask(pools, payload, clock()),
   'evaluate-alert': (payload) => evaluateAlertTask(pools, payload, clock()),
-  'send-notification': (payload, isLastTry) =>
-    sendNotificationTask(pools, mailer, payload, { now: clock(), isLastTry }),
+  'send-notification': () => sendNotificationTask(sender),
 });
 
-/** Listens on a connection of its own, so that a job starts when its transaction commits and not at the next poll. */
-const wakeOnNewJobs = async (databaseUrl: string, wake: (name: string) => void, log: Logger) => {
-  const client = new pg.Client({
-    connectionString: databaseUrl,
-    application_name: 'espalier-jobs',
-    keepAlive: true,
-  });
-  // Without the nudge jobs still start, at the queue's own polling interval.
-  client.on('error', (error) => log.warn({ err: error }, 'the connection that wakes the worker broke'));
-  client.on('notification', ({ payload }) => {
-    if (payload) wake(payload);
-  });
-  await client.connect();
-  await client.query(`listen ${jobChannel}`);
-  return client;
-};
+/**
+ * A job starts when its transaction commits and not at the next poll. After a break every queue is looked at, for
+ * what was committed in between woke nobody.
+ */
+const wakeOnNewJobs = (databaseUrl: string, wake: (name: string) => void, log: Logger) =>
+  listenTo(
+    { databaseUrl, channel: jobChannel, name: 'espalier-jobs' },
+    { onPayload: wake, onGap: () => Object.keys(jobPayloads).forEach(wake) },
+    log,
+  );
 
 /** Takes jobs until it is stopped, and gives a sign of life every few seconds. */
 export const startWork = async (options: WorkOptions): Promise<{ stop: () => Promise<void> }> => {
-  const { databaseUrl, pools, clock, log } = options;
+  const { databaseUrl, tools, clock, log, sendAtOnce } = options;
   const boss = new PgBoss({
     connectionString: databaseUrl,
     schema: queueSchema,
@@ -66,7 +54,8 @@ export const startWork = async (options: WorkOptions): Promise<{ stop: () => Pro
   boss.on('error', (error) => log.error({ err: error }, 'the queue reported an error'));
   await boss.start();
 
-  const tasks = tasksOf(options);
+  const sender = createSender(tools, { clock, log, ...(sendAtOnce ? { atOnce: sendAtOnce } : {}) });
+  const tasks = tasksOf(options, sender);
   const workerIds = new Map<string, string>();
   const wakeUp = (name: string): void => {
     const id = workerIds.get(name);
@@ -83,7 +72,7 @@ export const startWork = async (options: WorkOptions): Promise<{ stop: () => Pro
         for (const job of jobs) {
           try {
             const payload = schema.parse(job.data) as JobPayload<Name>;
-            await tasks[name](payload, job.retryCount >= queueOptions[name].retryLimit);
+            await tasks[name](payload);
           } catch (error) {
             log.error({ err: error, job: job.id, queue: name, retry: job.retryCount }, 'a job failed');
             throw new Error('The job failed; the log says why.');
@@ -95,11 +84,13 @@ export const startWork = async (options: WorkOptions): Promise<{ stop: () => Pro
   };
   for (const name of Object.keys(jobPayloads) as JobName[]) await take(name);
 
-  const waker = await wakeOnNewJobs(databaseUrl, wakeUp, log);
+  const waker = wakeOnNewJobs(databaseUrl, wakeUp, log);
+  await waker.ready;
+  const timed = startTimedWork(tools, { sender, clock, log });
 
   const workerId = randomUUID();
   const giveSign = () =>
-    beat(pools.gate, workerId, clock()).catch((error: unknown) =>
+    beat(tools.pools.gate, workerId, clock()).catch((error: unknown) =>
       log.error({ err: error }, 'no sign of life could be given'),
     );
   await giveSign();
@@ -108,8 +99,10 @@ export const startWork = async (options: WorkOptions): Promise<{ stop: () => Pro
   return {
     stop: async () => {
       clearInterval(heartbeat);
-      await waker.end();
+      await timed.stop();
+      await waker.stop();
       await boss.stop({ graceful: true, wait: true, timeout: 10_000 });
+      await sender.stop();
     },
   };
 };

@@ -6,8 +6,10 @@ export type PersonActor = {
   clinicId: string;
   personId: string;
   roles: Role[];
-  /** Present when this person is a patient. */
+  /** The patient whose record this request is about: their own, or one they look after. */
   patientId: string | null;
+  /** Present where it is not their own: what the patient lets this caregiver do. */
+  caring: { caregiverId: string; mayCheckIn: boolean; mayMessage: boolean } | null;
 };
 
 /** Someone who holds a one-time link and no account. */
@@ -23,4 +25,4 @@ type AnonymousActor = { kind: 'anonymous' };
  * Who a transaction acts as. Every transaction knows it, and row security reads its clinic. A person's roles are
  * read inside, from the clinic's own rows.
  */
-export type ActingAs = Omit<PersonActor, 'roles' | 'patientId'> | LinkActor | SystemActor | AnonymousActor;
+export type ActingAs = Omit<PersonActor, 'roles' | 'patientId' | 'caring'> | LinkActor | SystemActor | AnonymousActor;

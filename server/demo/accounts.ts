@@ -1,5 +1,9 @@
+import { createHash } from 'node:crypto';
+import { Secret } from 'otpauth';
+import { isStaff } from '#shared/access/permissions.ts';
 import { hashPassword } from '../features/accounts/passwords.ts';
-import type { credentials } from '../db/schema/gate.ts';
+import type { authenticators, credentials } from '../db/schema/gate.ts';
+import { authenticatorPurpose, seal } from '../features/accounts/sealing.ts';
 import { demoClinicId } from './clinic.ts';
 import { patientsOfDemo, personIdOf } from './patients.ts';
 import { staff, staffId } from './staff.ts';
@@ -48,3 +52,29 @@ export const demoCredentials = (): Promise<(typeof credentials.$inferInsert)[]> 
       passwordHash: await hashPassword(password),
     })),
   );
+
+/** The demo's authenticator app of somebody: like the passwords published, and worth nothing elsewhere. */
+const authenticatorSecretOf = (email: string): string => {
+  const bytes = createHash('sha256')
+    .update(`orchard-lane authenticator of ${email}`)
+    .digest()
+    .subarray(0, 20);
+  return new Secret({ buffer: new Uint8Array(bytes).buffer }).base32;
+};
+
+const staffWithAccounts = staff.filter(({ roles }) => isStaff(roles));
+
+/** Whose codes the outbox shows, since nobody has an app at hand that holds the demo's secrets. */
+export const demoAuthenticatorSecrets = staffWithAccounts.map(({ name, email }) => ({
+  name,
+  email,
+  secret: authenticatorSecretOf(email),
+}));
+
+export const demoAuthenticators = (sealSecret: string, at: Date): (typeof authenticators.$inferInsert)[] =>
+  staffWithAccounts.map(({ key, email }) => ({
+    personId: staffId(key),
+    clinicId: demoClinicId,
+    sealedSecret: seal(sealSecret, authenticatorPurpose, authenticatorSecretOf(email)),
+    confirmedAt: at,
+  }));

@@ -1,11 +1,20 @@
 import { eq, inArray, sql } from 'drizzle-orm';
 import type pg from 'pg';
 import { clinics } from '../db/schema/clinics.ts';
-import { browserSessions, credentials, signedInSessions } from '../db/schema/gate.ts';
+import {
+  authenticators,
+  browserSessions,
+  credentials,
+  oneTimeTokens,
+  passkeys,
+  pendingSignIns,
+  recoveryCodes,
+  signedInSessions,
+} from '../db/schema/gate.ts';
 import { withTx, type Tx } from '../db/with-tx.ts';
 import { moveToToday } from './anchor.ts';
 import { demoClinicId } from './clinic.ts';
-import { fillDemo } from './fill.ts';
+import { fillDemo, type DemoKeys } from './fill.ts';
 import { clinicTables } from './tables.ts';
 
 /** Any number that nothing else locks; two acts at once wait for each other. */
@@ -23,6 +32,9 @@ const isThere = async (tx: Tx): Promise<boolean> => {
   return clinic !== undefined;
 };
 
+/** The gate's tables that hold ways in, by clinic. */
+const waysIn = [credentials, passkeys, authenticators, recoveryCodes, pendingSignIns, oneTimeTokens] as const;
+
 /** Takes the demo clinic away, children first, with its ways in and its people's sessions. */
 const empty = async (tx: Tx): Promise<void> => {
   const sessions = tx
@@ -33,7 +45,7 @@ const empty = async (tx: Tx): Promise<void> => {
     .delete(browserSessions)
     .where(inArray(sql`${browserSessions.sess} -> 'passport' ->> 'user'`, sessions));
   await tx.delete(signedInSessions).where(eq(signedInSessions.clinicId, demoClinicId));
-  await tx.delete(credentials).where(eq(credentials.clinicId, demoClinicId));
+  for (const table of waysIn) await tx.delete(table).where(eq(table.clinicId, demoClinicId));
   for (const table of [...clinicTables].reverse()) {
     await tx.delete(table).where(eq(table.clinicId, demoClinicId));
   }
@@ -46,24 +58,28 @@ const empty = async (tx: Tx): Promise<void> => {
  */
 const demoActs = {
   /** Fills it where it is not there yet. */
-  fill: async (tx: Tx, now: Date): Promise<void> => {
-    if (!(await isThere(tx))) await fillDemo(tx, now);
+  fill: async (tx: Tx, now: Date, keys: DemoKeys): Promise<void> => {
+    if (!(await isThere(tx))) await fillDemo(tx, now, keys);
   },
   /** Moves it to today where it is of an earlier day. */
   're-anchor': async (tx: Tx, now: Date): Promise<void> => {
     if (await isThere(tx)) await moveToToday(tx, now);
   },
-  /** Empties it and fills it again. */
-  reset: async (tx: Tx, now: Date): Promise<void> => {
+  /** Takes it away where it is there: where the demo is off, its published passwords open nothing. */
+  remove: async (tx: Tx): Promise<void> => {
     if (await isThere(tx)) await empty(tx);
-    await fillDemo(tx, now);
+  },
+  /** Empties it and fills it again. */
+  reset: async (tx: Tx, now: Date, keys: DemoKeys): Promise<void> => {
+    if (await isThere(tx)) await empty(tx);
+    await fillDemo(tx, now, keys);
   },
 };
 
 export type DemoAct = keyof typeof demoActs;
 
-export const runDemoAct = (owner: pg.Pool, act: DemoAct, now: Date): Promise<void> =>
+export const runDemoAct = (owner: pg.Pool, act: DemoAct, now: Date, keys: DemoKeys): Promise<void> =>
   withTx(owner, { kind: 'system', clinicId: demoClinicId }, async (tx) => {
     await tx.execute(sql`select pg_advisory_xact_lock(${demoLock})`);
-    await demoActs[act](tx, now);
+    await demoActs[act](tx, now, keys);
   });

@@ -3,6 +3,9 @@ import type { PgColumn } from 'drizzle-orm/pg-core';
 import { daysBetween, localDateIn } from '#shared/plans/calendar.ts';
 import { alerts, checkIns } from '../db/schema/check-ins.ts';
 import { flags } from '../db/schema/flags.ts';
+import { oneTimeTokens } from '../db/schema/gate.ts';
+import { invitations } from '../db/schema/invitations.ts';
+import { notifications } from '../db/schema/notifications.ts';
 import { patients } from '../db/schema/patients.ts';
 import { messages, threads } from '../db/schema/threads.ts';
 import type { Tx } from '../db/with-tx.ts';
@@ -18,6 +21,9 @@ const staying: readonly PgColumn[] = [patients.birthDate];
 
 /** Written by the clocks of people's devices, which may be wrong by years: no measure of what is newest. */
 const ofDeviceClocks: readonly PgColumn[] = [checkIns.answeredAt, alerts.answeredAt];
+
+/** These lie ahead by what they are, and are not drawn to now. */
+const ahead: readonly PgColumn[] = [invitations.expiresAt, notifications.dueAt];
 
 type MovingColumn = { key: string; column: PgColumn; kind: 'instant' | 'date' };
 
@@ -45,7 +51,10 @@ const daysLater = ({ column, kind }: MovingColumn, days: number): SQL =>
 const newestInstants = async (tx: Tx, now: Date) => {
   const newest = clinicTables.flatMap((table) =>
     movingColumns(table)
-      .filter(({ kind, column }) => kind === 'instant' && !ofDeviceClocks.includes(column))
+      .filter(
+        ({ kind, column }) =>
+          kind === 'instant' && !ofDeviceClocks.includes(column) && !ahead.includes(column),
+      )
       .map(
         ({
           column,
@@ -72,7 +81,10 @@ export const keepOutOfTheFuture = async (tx: Tx, now: Date): Promise<void> => {
   const share = (now.getTime() - from.getTime()) / (everMs - from.getTime());
   const at = (instant: Date) => sql`${instant.toISOString()}::timestamptz`;
   for (const table of clinicTables) {
-    const columns = movingColumns(table).filter(({ kind }) => kind === 'instant');
+    const columns = movingColumns(table).filter(
+      ({ kind, column }) => kind === 'instant' && !ahead.includes(column),
+    );
+    if (columns.length === 0) continue;
     const isLater = ({ column }: MovingColumn): SQL => sql`${column} > ${at(now)}`;
     const values = columns.map((one): [string, SQL] => [
       one.key,
@@ -121,7 +133,7 @@ export const moveToToday = async (tx: Tx, now: Date): Promise<number> => {
   const newest = rows[0]?.newest;
   const days = newest ? daysBetween(newest, localDateIn(demoTimeZone, now)) : 0;
   if (days <= 0) return 0;
-  for (const table of clinicTables) {
+  for (const table of [...clinicTables, oneTimeTokens]) {
     const values = movingColumns(table).map((one): [string, SQL] => [one.key, daysLater(one, days)]);
     await update(tx, table, Object.fromEntries(values), ofDemo(table));
   }

@@ -18,5 +18,6 @@ export const demoClinic: typeof clinics.$inferSelect = {
   onCallNumber: '518-555-0111',
   phone: '518-555-0100',
   openingHours: [1, 2, 3, 4, 5].map((weekday) => ({ weekday, opens: '08:00', closes: '18:00' })),
+  country: 'US',
   isDemo: true,
 };

@@ -1,11 +1,17 @@
 import pg from 'pg';
 import { z } from 'zod';
-import { demoAccounts } from './accounts.ts';
+import { demoAccounts, demoAuthenticatorSecrets } from './accounts.ts';
 import { runDemoAct } from './acts.ts';
 
-const env = z.object({ OWNER_DATABASE_URL: z.string().min(1) }).parse(process.env);
+const env = z
+  .object({
+    OWNER_DATABASE_URL: z.string().min(1),
+    TOKEN_SECRET: z.string().min(32),
+    SEAL_SECRET: z.string().min(32),
+  })
+  .parse(process.env);
 const act = z
-  .enum(['fill', 're-anchor', 'reset'], 'Say what to do: fill, re-anchor or reset.')
+  .enum(['fill', 're-anchor', 'remove', 'reset'], 'Say what to do: fill, re-anchor, remove or reset.')
   .parse(process.argv[2]);
 
 const owner = new pg.Pool({
@@ -16,8 +22,13 @@ const owner = new pg.Pool({
 });
 
 try {
-  await runDemoAct(owner, act, new Date());
+  await runDemoAct(owner, act, new Date(), {
+    tokenSecret: env.TOKEN_SECRET,
+    sealSecret: env.SEAL_SECRET,
+  });
 } finally {
   await owner.end();
 }
-process.stdout.write(`${JSON.stringify({ accounts: demoAccounts })}\n`);
+process.stdout.write(
+  `${JSON.stringify({ accounts: demoAccounts, authenticators: demoAuthenticatorSecrets })}\n`,
+);

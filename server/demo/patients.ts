@@ -31,11 +31,17 @@ const named: readonly Line[] = [
   ['Soledad Quiroga', 96, 'L', 79, 'noor', 'warfarin'],
 ];
 
+/** Others of whom something is told: one before surgery, one away, one whom the clinic no longer watches. */
+const inOtherStates: readonly Line[] = [
+  ['Rosalind Achebe-Lind', -6, 'R', 67, 'noor', 'none'],
+  ['Ignatius Papadimitriou', 26, 'R', 71, 'noor', null],
+  ['Desmond Achterberg', 118, 'L', 73, 'callum', 'rivaroxaban'],
+];
+
 /** The rest of the caseload, all invented, with names as long and as written as names are. */
 const others: readonly Line[] = [
   ['Anselm Okwuosa', 71, 'R', 69, 'callum', 'none'],
   ['Birgit Falk', 3, 'L', 75, 'noor', 'none'],
-  ['Desmond Achterberg', 118, 'L', 73, 'callum', 'rivaroxaban'],
   ['Yewande Castellanos', 47, 'R', 64, 'noor', 'none'],
   ['Þórunn Guðmundsdóttir', 15, 'L', 71, 'callum', 'none'],
   ['Leocadia Wolańska-Brzęczyszczykiewicz', 17, 'R', 76, 'noor', 'aspirin'],
@@ -61,7 +67,6 @@ const others: readonly Line[] = [
   ['Eun-ji Bangwool', 18, 'L', 61, 'callum', 'none'],
   ['Haruto Shirakawa', 20, 'R', 85, 'noor', 'clopidogrel'],
   ['Margarethe Überreiter', 22, 'L', 77, 'callum', 'none'],
-  ['Ignatius Papadimitriou', 26, 'R', 71, 'noor', null],
   ['Parvaneh Golestani', 29, 'L', 64, 'callum', 'none'],
   ['Lucjan Żółkiewski', 35, 'R', 79, 'noor', 'rivaroxaban'],
   ['Consolata Wanjiru', 43, 'L', 67, 'noor', 'none'],
@@ -115,6 +120,7 @@ const toPatient = ([name, day, arm, age, lead, thinner = null]: Line, hasAccount
 
 export const patientsOfDemo: readonly DemoPatient[] = [
   ...named.map((line) => toPatient(line, true)),
+  ...inOtherStates.map((line) => toPatient(line, true)),
   ...others.map((line) => toPatient(line, false)),
 ];
 

@@ -237,6 +237,7 @@ export const scenarioOn = (today: LocalDate): Record<string, Script> => {
     'Gwen Thackeray': { silentFrom: back(3) },
     'Vaiola Fonoimoana': { silentFrom: back(2) },
     'Ignatius Papadimitriou': { silentFrom: back(5) },
+    'Desmond Achterberg': { silentFrom: back(2) },
     'Gerhardt Weißenbacher': { silentFrom: back(8) },
     'Oskar Tällberg': { silentFrom: back(6) },
   };

@@ -9,6 +9,8 @@ type StaffMember = {
   name: string;
   credential: string | null;
   email: string;
+  /** What pages ring, in the reserved block. */
+  phone: string | null;
   roles: Role[];
   /** How the list of accounts calls them. */
   role: string;
@@ -20,6 +22,7 @@ export const staff: readonly StaffMember[] = [
     name: 'Noor Haddad',
     credential: 'PT',
     email: 'noor.haddad@orchard-lane.example',
+    phone: '+15185550112',
     roles: ['therapist', 'clinical-lead'],
     role: 'therapist and clinical lead',
   },
@@ -28,6 +31,7 @@ export const staff: readonly StaffMember[] = [
     name: 'Callum Reyes',
     credential: 'PT',
     email: 'callum.reyes@orchard-lane.example',
+    phone: '+15185550113',
     roles: ['therapist'],
     role: 'therapist',
   },
@@ -36,6 +40,7 @@ export const staff: readonly StaffMember[] = [
     name: 'Petra Lindqvist',
     credential: 'PA',
     email: 'petra.lindqvist@orchard-lane.example',
+    phone: '+15185550114',
     roles: ['on-call-clinician'],
     role: 'on-call clinician',
   },
@@ -44,6 +49,7 @@ export const staff: readonly StaffMember[] = [
     name: 'Dov Amsel',
     credential: 'RN',
     email: 'dov.amsel@orchard-lane.example',
+    phone: '+15185550115',
     roles: ['on-call-clinician'],
     role: 'on-call clinician',
   },
@@ -52,6 +58,7 @@ export const staff: readonly StaffMember[] = [
     name: 'Joss Amory',
     credential: null,
     email: 'joss.amory@orchard-lane.example',
+    phone: '+15185550116',
     roles: ['administrator'],
     role: 'administrator',
   },
@@ -60,6 +67,7 @@ export const staff: readonly StaffMember[] = [
     name: 'Mirela Stancu',
     credential: null,
     email: 'mirela.stancu@orchard-lane.example',
+    phone: null,
     roles: ['billing'],
     role: 'billing',
   },
@@ -68,8 +76,9 @@ export const staff: readonly StaffMember[] = [
     name: 'Teo Valcourt',
     credential: null,
     email: 'teo@valcourt.example',
+    phone: '+15185550117',
     roles: ['caregiver'],
-    role: 'caregiver of Ines',
+    role: 'caregiver of Ines and a neighbor',
   },
 ];
 

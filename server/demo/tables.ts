@@ -2,8 +2,16 @@ import type { PgColumn, PgTable } from 'drizzle-orm/pg-core';
 import { auditEntries } from '../db/schema/audit.ts';
 import { alertMistakes, alerts, checkIns } from '../db/schema/check-ins.ts';
 import { findings, flagEvents, flags } from '../db/schema/flags.ts';
-import { notifications } from '../db/schema/notifications.ts';
-import { careTeamMembers, operationCards, patients } from '../db/schema/patients.ts';
+import { caregivers } from '../db/schema/caregivers.ts';
+import { invitations, twoPersonActs } from '../db/schema/invitations.ts';
+import { notifications, notificationSettings, pushSubscriptions } from '../db/schema/notifications.ts';
+import {
+  careTeamMembers,
+  chartOpenings,
+  operationCards,
+  patients,
+  patientStateChanges,
+} from '../db/schema/patients.ts';
 import { people, personRoles } from '../db/schema/people.ts';
 import { plans, signOffs } from '../db/schema/plans.ts';
 import { messages, threadParticipants, threads } from '../db/schema/threads.ts';
@@ -33,5 +41,12 @@ export const clinicTables: readonly ClinicTable[] = [
   messages,
   threadParticipants,
   notifications,
+  notificationSettings,
+  pushSubscriptions,
+  patientStateChanges,
+  chartOpenings,
+  caregivers,
+  invitations,
+  twoPersonActs,
   auditEntries,
 ];

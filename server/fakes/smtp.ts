@@ -13,6 +13,9 @@ function addresses(field: AddressObject | AddressObject[] | undefined): string[]
   return [field ?? []].flat().flatMap((list) => list.value.map((entry) => entry.address ?? entry.name));
 }
 
+/** Addresses that stand for mailboxes that are not there. */
+const bounces = (address: string): boolean => /^bounce|@bounce\.example$/i.test(address);
+
 /** A mail server that delivers nothing: each accepted mail goes to `receive`, with or without a sign-in. */
 export function smtpFake({ receive, refusesUntilMs }: SmtpFake): SMTPServer {
   return new SMTPServer({
@@ -20,6 +23,11 @@ export function smtpFake({ receive, refusesUntilMs }: SmtpFake): SMTPServer {
     disabledCommands: ['STARTTLS'],
     allowInsecureAuth: true,
     onAuth: (_auth, _session, done) => done(null, { user: 'anyone' }),
+    onRcptTo: ({ address }, _session, done) => {
+      if (!bounces(address)) done();
+      // RFC 5321 and RFC 3463: the mailbox is not there, and no further try will help.
+      else done(Object.assign(new Error('5.1.1 There is no such mailbox'), { responseCode: 550 }));
+    },
     onData: (stream, session, done) => {
       simpleParser(stream)
         .then((parsed) => {

@@ -6,7 +6,7 @@ declare global {
     interface User {
       clinicId: string;
       personId: string;
-      /** Missing only between the password check and the start of the session. */
+      /** Missing between the password check and the start of the session, and once the session is over. */
       session?: SignedIn;
     }
   }

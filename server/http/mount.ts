@@ -1,13 +1,14 @@
 import { timingSafeEqual } from 'node:crypto';
 import type { IRouter, Request, Response } from 'express';
 import type { z } from 'zod';
-import { may } from '#shared/access/permissions.ts';
+import { isStaff, may } from '#shared/access/permissions.ts';
 import { Problem, type FieldError } from '#shared/problems/problems.ts';
 import type { Pools } from '../db/pools.ts';
 import { withTx } from '../db/with-tx.ts';
 import { loadPersonActor } from '../features/accounts/queries.ts';
 import { writeAudit } from '../features/audit/service.ts';
 import { browserOf, type Browser, type BrowserKeys } from './browser.ts';
+import type { Site } from './site.ts';
 import { isPublic, type GuardedRoute, type PublicRoute, type Route } from './route.ts';
 
 export type MountOptions = {
@@ -16,7 +17,14 @@ export type MountOptions = {
   clock: () => Date;
   /** The origin that pages are served from; writes from any other are refused. */
   publicOrigin: string;
+  site: Site;
 };
+
+/** A proof of who somebody is holds for this long. */
+const proofHoldsMs = 5 * 60_000;
+
+/** Names the patient that a caregiver acts for. Without it a person acts on their own record. */
+const patientHeader = 'x-espalier-patient';
 
 const fieldErrors = (part: string, error: z.ZodError): FieldError[] =>
   error.issues.flatMap((issue): FieldError[] => {
@@ -81,7 +89,7 @@ const servePublic = async (route: PublicRoute, req: Request, options: MountOptio
   const browser = browserOf(req, options.keys, now);
   // Signing in replaces whatever session the browser held, so it needs no token of that one.
   assertOwnWrite(req, { ...browser, signedIn: null }, options.publicOrigin);
-  return route.handler({ ...parseInput(route, req), pools: options.pools, now, browser });
+  return route.handler({ ...parseInput(route, req), pools: options.pools, now, browser, site: options.site });
 };
 
 /** Ids only: whatever else stood in an address stays out of the audit. */
@@ -102,10 +110,17 @@ const serveGuarded = async (route: GuardedRoute, req: Request, options: MountOpt
   const person = { kind: 'person', clinicId: signedIn.clinicId, personId: signedIn.personId } as const;
   try {
     return await withTx(options.pools.app, person, async (tx) => {
-      const actor = await loadPersonActor(tx, person);
+      const actor = await loadPersonActor(tx, person, { caresFor: req.get(patientHeader), now });
       if (!actor) throw new Problem('not-signed-in');
-      if (!may(actor.roles, route.access.permission)) throw new Problem('forbidden');
-      return route.handler({ ...parseInput(route, req), tx, actor, now, browser });
+      const { permission, proof, beforeSecondFactor } = route.access;
+      if (!may(actor.roles, permission)) throw new Problem('forbidden');
+      if (!beforeSecondFactor && isStaff(actor.roles) && signedIn.secondFactor === null) {
+        throw new Problem('second-factor-needed');
+      }
+      if (proof && now.getTime() - signedIn.provenAt.getTime() > proofHoldsMs) {
+        throw new Problem('proof-needed');
+      }
+      return route.handler({ ...parseInput(route, req), tx, actor, now, browser, site: options.site });
     });
   } catch (error) {
     if (error instanceof Problem && (error.code === 'not-found' || error.code === 'forbidden')) {

@@ -6,17 +6,25 @@ import { liveSession } from './sessions.ts';
 
 const dayMs = 24 * 60 * 60 * 1000;
 
+/**
+ * Whoever holds a session that is over. Passport takes `false` for an answer too, and then forgets which session
+ * this browser held: what that one left here, such as push, could no longer be taken away.
+ */
+const nobody: Express.User = { clinicId: '', personId: '' };
+
 export type VerifyPassword = (
   email: string,
   password: string,
+  /** The address of the visitor who asks. */
+  from: string,
 ) => Promise<{ clinicId: string; personId: string } | null>;
 
 /** Passport with the local strategy; what it keeps in the browser's session is the id of our own session row. */
 export const configurePassport = (pools: Pools, clock: () => Date, verifyPassword: VerifyPassword) => {
   const authenticator = new Passport();
   authenticator.use(
-    new Strategy({ usernameField: 'email' }, (email, password, done) => {
-      verifyPassword(email, password).then(
+    new Strategy({ usernameField: 'email', passReqToCallback: true }, (req, email, password, done) => {
+      verifyPassword(email, password, req.ip ?? '').then(
         (person) => done(null, person ?? false),
         (error: unknown) => done(error),
       );
@@ -33,7 +41,7 @@ export const configurePassport = (pools: Pools, clock: () => Date, verifyPasswor
   authenticator.deserializeUser<string>((sessionId, done) => {
     liveSession(pools.gate, sessionId, clock()).then(
       (session) =>
-        done(null, session ? { clinicId: session.clinicId, personId: session.personId, session } : false),
+        done(null, session ? { clinicId: session.clinicId, personId: session.personId, session } : nobody),
       (error: unknown) => done(error),
     );
   });

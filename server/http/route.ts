@@ -4,16 +4,32 @@ import type { PersonActor } from '../db/actor.ts';
 import type { Pools } from '../db/pools.ts';
 import type { Tx } from '../db/with-tx.ts';
 import type { Browser } from './browser.ts';
+import type { Site } from './site.ts';
 
 /** What a handler behind a permission works with: one transaction, and who acts in it. */
-export type GuardedContext = { tx: Tx; actor: PersonActor; now: Date; browser: Browser };
+export type GuardedContext = {
+  tx: Tx;
+  actor: PersonActor;
+  now: Date;
+  browser: Browser;
+  site: Site;
+};
 
 /** What a public handler works with. There is no actor: it cannot act as anybody. */
-export type PublicContext = { pools: Pools; now: Date; browser: Browser };
+export type PublicContext = { pools: Pools; now: Date; browser: Browser; site: Site };
+
+/** What a guarded route asks for beside the permission. */
+type GuardedAccess = {
+  permission: Permission;
+  /** A sensitive act: the person proved who they are within the last five minutes. */
+  proof?: true;
+  /** Staff may do it before they have given a second factor, in order to set one up. */
+  beforeSecondFactor?: true;
+};
 
 export type GuardedRoute = {
   contract: Contract;
-  access: { permission: Permission };
+  access: GuardedAccess;
   /** The action that its one audit entry carries; or why it writes none. */
   audit: string | { none: string };
   handler: (input: Record<string, unknown> & GuardedContext) => Promise<unknown>;
@@ -34,7 +50,7 @@ export const isPublic = (route: Route): route is PublicRoute => 'public' in rout
 export function route<C extends Contract>(
   contract: C,
   definition: {
-    access: { permission: Permission };
+    access: GuardedAccess;
     audit: string | { none: string };
     handler: (context: InputOf<C> & GuardedContext) => Promise<OutputOf<C>>;
   },

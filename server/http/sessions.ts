@@ -1,6 +1,6 @@
 import { createHmac } from 'node:crypto';
 import connectPgSimple from 'connect-pg-simple';
-import { and, eq, gt, isNull, or, sql } from 'drizzle-orm';
+import { and, desc, eq, gt, isNull, ne, or, sql } from 'drizzle-orm';
 import { drizzle } from 'drizzle-orm/node-postgres';
 import type { RequestHandler } from 'express';
 import session from 'express-session';
@@ -26,7 +26,12 @@ export type SignedIn = {
   idleAfterMs: number | null;
   lastActivityAt: Date;
   endsAt: Date;
+  /** When the person last proved who they are. */
+  provenAt: Date;
+  secondFactor: SecondFactor | null;
 };
+
+export type SecondFactor = 'passkey' | 'authenticator' | 'recovery-code';
 
 export type SessionKeys = { gate: pg.Pool; secret: string };
 
@@ -39,6 +44,8 @@ const signedInColumns = {
   idleAfterMs: signedInSessions.idleAfterMs,
   lastActivityAt: signedInSessions.lastActivityAt,
   endsAt: signedInSessions.endsAt,
+  provenAt: signedInSessions.provenAt,
+  secondFactor: signedInSessions.secondFactor,
 };
 
 const isAlive = (now: Date) =>
@@ -63,6 +70,18 @@ export const liveSession = async (gate: pg.Pool, sessionId: string, now: Date): 
   return rows[0] ?? null;
 };
 
+/** Somebody's live sessions with what their owner knows them by, newest activity first. */
+export const liveSessionsOf = (gate: pg.Pool, personId: string, now: Date) =>
+  gateDb(gate)
+    .select({
+      ...signedInColumns,
+      startedAt: signedInSessions.startedAt,
+      userAgent: signedInSessions.userAgent,
+    })
+    .from(signedInSessions)
+    .where(and(eq(signedInSessions.personId, personId), isAlive(now)))
+    .orderBy(desc(signedInSessions.lastActivityAt), desc(signedInSessions.startedAt), signedInSessions.id);
+
 export const startSession = async (
   gate: pg.Pool,
   person: {
@@ -70,6 +89,7 @@ export const startSession = async (
     personId: string;
     isStaff: boolean;
     staySignedIn: boolean;
+    secondFactor: SecondFactor | null;
     userAgent: string | null;
   },
   now: Date,
@@ -85,6 +105,8 @@ export const startSession = async (
       idleAfterMs: life.idleAfterMs,
       endsAt: new Date(now.getTime() + life.endsAfterMs),
       userAgent: person.userAgent,
+      provenAt: now,
+      secondFactor: person.secondFactor,
     })
     .returning(signedInColumns);
   const started = rows[0];
@@ -97,6 +119,56 @@ export const revokeSession = async (gate: pg.Pool, sessionId: string, now: Date)
     .update(signedInSessions)
     .set({ revokedAt: now })
     .where(and(eq(signedInSessions.id, sessionId), isNull(signedInSessions.revokedAt)));
+};
+
+/** Ends a live session of that person; false where there is none of that id. */
+export const revokeSessionOf = async (
+  gate: pg.Pool,
+  { personId, sessionId }: { personId: string; sessionId: string },
+  now: Date,
+): Promise<boolean> => {
+  const rows = await gateDb(gate)
+    .update(signedInSessions)
+    .set({ revokedAt: now })
+    .where(and(eq(signedInSessions.id, sessionId), eq(signedInSessions.personId, personId), isAlive(now)))
+    .returning({ id: signedInSessions.id });
+  return rows.length > 0;
+};
+
+/** Ends every live session of a person but the one that is kept; returns the ids of those that ended. */
+export const revokeSessionsOf = async (
+  gate: pg.Pool,
+  personId: string,
+  now: Date,
+  keep: string | null = null,
+): Promise<string[]> => {
+  const rows = await gateDb(gate)
+    .update(signedInSessions)
+    .set({ revokedAt: now })
+    .where(
+      and(
+        eq(signedInSessions.personId, personId),
+        isNull(signedInSessions.revokedAt),
+        keep === null ? undefined : ne(signedInSessions.id, keep),
+      ),
+    )
+    .returning({ id: signedInSessions.id });
+  return rows.map(({ id }) => id);
+};
+
+/** The person has proved anew who they are, and perhaps given a second factor; null where the session ended. */
+export const proveSession = async (
+  gate: pg.Pool,
+  sessionId: string,
+  secondFactor: SecondFactor | null,
+  now: Date,
+): Promise<SignedIn | null> => {
+  const rows = await gateDb(gate)
+    .update(signedInSessions)
+    .set({ provenAt: now, ...(secondFactor === null ? {} : { secondFactor }) })
+    .where(and(eq(signedInSessions.id, sessionId), isAlive(now)))
+    .returning(signedInColumns);
+  return rows[0] ?? null;
 };
 
 /** Starts the idle clock anew; null where the session is no longer alive. */

@@ -2,27 +2,31 @@ import type { IncomingMessage, Server as HttpServer } from 'node:http';
 import type { RequestHandler } from 'express';
 import type { Logger } from 'pino';
 import { Server, type Socket } from 'socket.io';
-import { isClinician } from '#shared/access/permissions.ts';
+import { isClinician, isStaff } from '#shared/access/permissions.ts';
 import { hintEvent, sessionEndedEvent, type Hint } from '#shared/realtime/hints.ts';
 import type { Identity } from '../app.ts';
 import type { Pools } from '../db/pools.ts';
 import { withTx } from '../db/with-tx.ts';
-import { loadPersonActor } from '../features/accounts/queries.ts';
-import { liveSession } from '../http/sessions.ts';
+import { loadPersonActor, recordsOf } from '../features/accounts/queries.ts';
+import { liveSession, type SignedIn } from '../http/sessions.ts';
 import type { Announcement, Audience } from './announce.ts';
 
 const rooms = {
   session: (id: string) => `session:${id}`,
   person: (id: string) => `person:${id}`,
+  patient: (id: string) => `patient:${id}`,
   clinicians: (clinicId: string) => `clinicians:${clinicId}`,
 };
 
-const roomFor = (to: Audience): string =>
-  'person' in to ? rooms.person(to.person) : rooms.clinicians(to.clinicians);
+const roomFor = (to: Audience): string => {
+  if ('person' in to) return rooms.person(to.person);
+  return 'patient' in to ? rooms.patient(to.patient) : rooms.clinicians(to.clinicians);
+};
 
 type SocketData = { sessionId: string };
 type ServerEvents = { [hintEvent]: (hint: Hint) => void; [sessionEndedEvent]: () => void };
 type Sockets = Server<Record<string, never>, ServerEvents, Record<string, never>, SocketData>;
+type OpenSocket = Socket<Record<string, never>, ServerEvents, Record<string, never>, SocketData>;
 
 /** Sessions end by themselves too; open sockets are looked at this often. */
 const revalidateEveryMs = 10_000;
@@ -60,38 +64,60 @@ export const openSockets = (
     io.engine.use(onHandshake(middleware));
   }
 
+  /** The rooms that a session's person may be in now; null where it opens nothing any more. */
+  const roomsFor = async (session: SignedIn): Promise<string[] | null> => {
+    const person = { kind: 'person', clinicId: session.clinicId, personId: session.personId } as const;
+    return withTx(pools.app, person, async (tx) => {
+      const actor = await loadPersonActor(tx, person);
+      if (!actor || (isStaff(actor.roles) && session.secondFactor === null)) return null;
+      const records = await recordsOf(tx, actor, clock());
+      return [
+        rooms.session(session.sessionId),
+        rooms.person(actor.personId),
+        ...(isClinician(actor.roles) ? [rooms.clinicians(actor.clinicId)] : []),
+        ...records.map((patientId) => rooms.patient(patientId)),
+      ];
+    });
+  };
+
   io.use((socket, next) => {
     const session = (socket.request as IncomingMessage & { user?: Express.User }).user?.session;
     if (!session) {
       next(new Error('not-signed-in'));
       return;
     }
-    const person = { kind: 'person', clinicId: session.clinicId, personId: session.personId } as const;
-    withTx(pools.app, person, (tx) => loadPersonActor(tx, person)).then(
-      async (actor) => {
-        if (!actor) return next(new Error('not-signed-in'));
+    roomsFor(session).then(
+      async (allowed) => {
+        if (!allowed) return next(new Error('not-signed-in'));
         socket.data.sessionId = session.sessionId;
-        await socket.join([rooms.session(session.sessionId), rooms.person(actor.personId)]);
-        if (isClinician(actor.roles)) await socket.join(rooms.clinicians(actor.clinicId));
+        await socket.join(allowed);
         next();
       },
       () => next(new Error('unavailable')),
     );
   });
 
-  // A session may have ended between the handshake and the join; nothing that was revoked stays connected.
-  io.on('connection', (socket) => void endIfDead(socket));
+  // Session or rights may have ended between the handshake and the join; nothing that was revoked stays.
+  io.on('connection', (socket) => void judgeAnew(socket));
 
-  const end = (socket: Pick<Socket<Record<string, never>, ServerEvents>, 'emit' | 'disconnect'>): void => {
+  const end = (socket: OpenSocket): void => {
     socket.emit(sessionEndedEvent);
     socket.disconnect(true);
   };
 
-  const endIfDead = async (
-    socket: Socket<Record<string, never>, ServerEvents, Record<string, never>, SocketData>,
-  ) => {
+  /** Ends a socket whose session or person is no more, and leaves the rooms that are no longer theirs. */
+  const judgeAnew = async (socket: OpenSocket): Promise<void> => {
     try {
-      if (!(await liveSession(pools.gate, socket.data.sessionId, clock()))) end(socket);
+      const session = await liveSession(pools.gate, socket.data.sessionId, clock());
+      const allowed = session ? await roomsFor(session) : null;
+      if (!allowed) {
+        end(socket);
+        return;
+      }
+      for (const room of socket.rooms) {
+        if (room !== socket.id && !allowed.includes(room)) await socket.leave(room);
+      }
+      await socket.join(allowed);
     } catch (error) {
       log.warn({ err: error }, 'a socket could not be checked against its session; it is closed');
       socket.disconnect(true);
@@ -99,7 +125,7 @@ export const openSockets = (
   };
 
   const revalidation = setInterval(() => {
-    for (const socket of io.sockets.sockets.values()) void endIfDead(socket);
+    for (const socket of io.sockets.sockets.values()) void judgeAnew(socket);
   }, revalidateEveryMs);
 
   return {
@@ -107,6 +133,14 @@ export const openSockets = (
       if ('endedSession' in announcement) {
         for (const [, socket] of io.sockets.sockets) {
           if (socket.data.sessionId === announcement.endedSession) end(socket);
+        }
+        return;
+      }
+      if ('changedPerson' in announcement) {
+        const room = rooms.person(announcement.changedPerson);
+        for (const [, socket] of io.sockets.sockets) {
+          if (!socket.rooms.has(room)) continue;
+          void judgeAnew(socket).then(() => socket.emit(hintEvent, { topic: 'session' }));
         }
         return;
       }

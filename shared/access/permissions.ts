@@ -11,28 +11,33 @@ export const roles = [
 
 export type Role = (typeof roles)[number];
 
+const everybody = roles;
+const clinicians = ['therapist', 'on-call-clinician', 'clinical-lead'] as const;
+
 /**
  * Roles × permissions on one screen. A permission opens a kind of act; which rows it opens is decided
- * by the door of that row. A caregiver's, an administrator's and billing's acts come with their screens.
+ * by the door of that row. A caregiver acts on the record of the patient who let them in, within limits.
  */
 const grants = {
-  'session:own': [
-    'patient',
-    'caregiver',
-    'therapist',
-    'on-call-clinician',
-    'clinical-lead',
-    'administrator',
-    'billing',
-  ],
-  'today:read': ['patient'],
-  'check-in:write': ['patient'],
-  'flag:read': ['therapist', 'on-call-clinician', 'clinical-lead'],
-  'flag:work': ['therapist', 'on-call-clinician', 'clinical-lead'],
-  'thread:read': ['patient', 'therapist', 'on-call-clinician', 'clinical-lead'],
-  'thread:write': ['patient', 'therapist', 'on-call-clinician', 'clinical-lead'],
-  'thread:close': ['therapist', 'on-call-clinician', 'clinical-lead'],
-  'worker:read': ['therapist', 'on-call-clinician', 'clinical-lead', 'administrator', 'billing'],
+  'session:own': everybody,
+  'account:own': everybody,
+  'today:read': ['patient', 'caregiver'],
+  'check-in:write': ['patient', 'caregiver'],
+  'caregiver:manage': ['patient'],
+  'activity:read': ['patient'],
+  'flag:read': clinicians,
+  'flag:work': clinicians,
+  'thread:read': ['patient', 'caregiver', ...clinicians],
+  'thread:write': ['patient', 'caregiver', ...clinicians],
+  'thread:close': clinicians,
+  'patient:list': [...clinicians, 'administrator'],
+  'patient:invite': [...clinicians, 'administrator'],
+  'patient:read': clinicians,
+  'patient:write': clinicians,
+  'person:manage': ['administrator'],
+  'two-person:decide': ['clinical-lead', 'administrator'],
+  'delivery:manage': ['administrator'],
+  'worker:read': [...clinicians, 'administrator', 'billing'],
 } as const satisfies Record<string, readonly Role[]>;
 
 export type Permission = keyof typeof grants;
@@ -45,14 +50,14 @@ export const may = (held: readonly Role[], permission: Permission): boolean => {
 };
 
 /** Clinicians cover the clinic's queue; the rest of the staff sees no answers. */
-export const clinicianRoles = [
-  'therapist',
-  'on-call-clinician',
-  'clinical-lead',
-] as const satisfies readonly Role[];
+export const clinicianRoles = clinicians satisfies readonly Role[];
 
 export const isClinician = (held: readonly Role[]): boolean =>
   held.some((role) => (clinicianRoles as readonly Role[]).includes(role));
+
+/** Works for the clinic: has a second factor, and a session that ends after 15 idle minutes. */
+export const isStaff = (held: readonly Role[]): boolean =>
+  held.some((role) => role !== 'patient' && role !== 'caregiver');
 
 /** Clinicians who answer for the whole clinic, and so read threads outside their own care teams. */
 export const coversClinic = (held: readonly Role[]): boolean =>

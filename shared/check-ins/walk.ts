@@ -53,7 +53,7 @@ export const choicesFor = (choices: readonly Choice[], context: AskContext): Cho
 
 /** The hold-off list as choices, in the words of the plan for what was done. */
 export const precautionChoices = (context: AskContext): Choice[] =>
-  precautionsToAsk(context).map((code) => ({ code, textKey: `plan:precautions.${code}.did` }));
+  precautionsToAsk(context).map((code) => ({ code, textKey: `plan-details:precautions.${code}.did` }));
 
 /** Estimated seconds from the current screen to the end, in steps of five as it is shown; never nothing. */
 export const secondsLeft = (

@@ -22,7 +22,9 @@ export const getSignInPage = contract({
   summary: 'What the sign-in page shows of the clinic, where this server holds just one.',
   status: 200,
   output: z.object({
-    clinic: z.object({ name: z.string(), emergencyNumber: z.string() }).nullable(),
+    clinic: z.object({ name: z.string(), phone: z.string(), emergencyNumber: z.string() }).nullable(),
+    /** A clinic of invented people, whose mails and codes anybody on this machine may read. */
+    demo: z.boolean(),
   }),
 });
 
@@ -37,7 +39,7 @@ export const getWorkerHealth = contract({
     late: z.boolean(),
     /** Check-ins and alerts of this clinic that no rule has seen for over 30 seconds. */
     unevaluated: z.number().int(),
-    /** Mails of this clinic that failed for good, or that wait for over ten minutes. */
+    /** Pages of this clinic that reached nobody in the last seven days, and whatever is over ten minutes late. */
     unsent: z.number().int(),
   }),
 });

@@ -7,6 +7,8 @@ export type Hint =
   | { topic: 'thread'; threadId: string; sequence: number }
   | { topic: 'alert'; alertId: string }
   | { topic: 'today' }
+  /** One's own roles, care or settings changed: ask who one is. */
+  | { topic: 'session' }
   /** The server may have missed hints: fetch everything on the screen again. */
   | { topic: 'everything' };
 

@@ -15,7 +15,15 @@ export const message = z.object({
   /** Position in the thread's one order, from 1, without gaps. */
   sequence: z.number().int(),
   kind: z.enum(['message', 'note']),
-  author: z.object({ personId: z.uuid(), name: z.string(), side: z.enum(['patient', 'clinic']) }).nullable(),
+  author: z
+    .object({
+      personId: z.uuid(),
+      name: z.string(),
+      side: z.enum(['patient', 'clinic']),
+      /** Present where a caregiver wrote for the patient: what they are to the patient. */
+      relationship: z.string().optional(),
+    })
+    .nullable(),
   text: z.string(),
   sentAt: z.iso.datetime(),
 });

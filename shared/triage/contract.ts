@@ -85,6 +85,8 @@ export const flagCase = flagRow.extend({
     }),
   ),
   answeredAt: z.iso.datetime(),
+  /** Present where a caregiver answered for the patient. */
+  answeredBy: z.object({ name: z.string(), relationship: z.string() }).optional(),
   note: z.string().nullable(),
   inForce: z.array(
     z.object({ code: z.string(), text: z.string(), usualDate: z.iso.date(), due: z.boolean() }),

@@ -11,6 +11,8 @@ import { Splash } from './Splash.tsx';
 /** It watches; nothing waits for it, so it comes after the screen. */
 const SessionGuard = lazy(async () => ({ default: (await import('./SessionGuard.tsx')).SessionGuard }));
 
+const secondFactorPath = '/second-factor';
+
 type Props = { anyOf: readonly Role[] };
 
 /** Lets through whoever holds one of the roles; sends others to sign in, or to their own first screen. */
@@ -45,6 +47,10 @@ export function RequireRole({ anyOf }: Props) {
     const place = `${location.pathname}${location.search}`;
     const search = place === '/' ? '' : `?then=${encodeURIComponent(place)}`;
     return <Navigate to={`/sign-in${search}`} state={{ ended: session.data?.ended }} replace />;
+  }
+  // Staff may do nothing but set up their second factor until they have one.
+  if (me.secondFactor === 'missing' && location.pathname !== secondFactorPath) {
+    return <Navigate to={secondFactorPath} replace />;
   }
   if (!me.roles.some((role) => anyOf.includes(role))) return <Navigate to={homeOf(me.roles)} replace />;
   return (

@@ -18,11 +18,11 @@ export function UpdateBanner() {
         <Banner
           action={
             <Button variant="outline" onClick={() => window.location.reload()}>
-              {t('update.reload')}
+              {t('reload')}
             </Button>
           }
         >
-          {t('update.ready')}
+          {t('failed.updated')}
         </Banner>
       ) : null}
     </div>

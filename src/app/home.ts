@@ -5,6 +5,9 @@ import type { Role } from '#shared/access/permissions.ts';
 export function homeOf(roles: readonly Role[]): string {
   if (roles.includes('patient')) return '/today';
   if (isClinician(roles)) return '/round';
+  // Where it is not clear for whom, Today itself leads to the question.
+  if (roles.includes('caregiver')) return '/today';
+  if (roles.includes('administrator')) return '/clinic/people';
   return '/no-screens';
 }
 

@@ -14,6 +14,8 @@ type IdleClock = {
   warning: boolean;
   endsAtMs: number;
   stay: () => void;
+  /** It was asked to stay, and nothing answered. */
+  stayFailed: boolean;
 };
 
 /**
@@ -27,7 +29,7 @@ export function useIdleClock(idleEndsAt: string | null): IdleClock {
   const warning = warnedFor === endsAtMs;
   const lastToldMs = useRef(-Infinity);
 
-  const { mutate: tell } = useMutation({
+  const { mutate: tell, isError: stayFailed } = useMutation({
     mutationFn: () => call<typeof noteActivity>('post', '/api/session/activity', {}),
     onMutate: () => {
       lastToldMs.current = Date.now();
@@ -91,5 +93,5 @@ export function useIdleClock(idleEndsAt: string | null): IdleClock {
   }, [queryClient, idleEndsAt, endsAtMs]);
 
   const stay = useCallback(() => tell(), [tell]);
-  return { warning, endsAtMs, stay };
+  return { warning, endsAtMs, stay, stayFailed };
 }

@@ -1,7 +1,8 @@
-import { useMutation } from '@tanstack/react-query';
+import { useMutation, useQueryClient } from '@tanstack/react-query';
 import type { signOut } from '#shared/accounts/contract.ts';
 import { call } from '#src/lib/api.ts';
-import { clearDeviceStore } from '#src/lib/device-store.ts';
+import { forgetDevice } from './forget-device.ts';
+import { dropBrowserPush } from './push.ts';
 import { tellOtherTabs } from './tabs.ts';
 
 /**
@@ -10,10 +11,17 @@ import { tellOtherTabs } from './tabs.ts';
  * told so, since the cookie could not be ended.
  */
 export function useSignOut() {
+  const queryClient = useQueryClient();
   return useMutation({
-    mutationFn: () => call<typeof signOut>('delete', '/api/session', {}),
-    onSuccess: () => {
-      clearDeviceStore();
+    mutationFn: async () => {
+      // Off line a browser may refuse this. The sign-out goes on: the server forgets this device with the
+      // session, and with the service worker goes what the browser holds of it.
+      await dropBrowserPush().catch(() => undefined);
+      await call<typeof signOut>('delete', '/api/session', {}, { record: null });
+    },
+    onSuccess: async () => {
+      queryClient.clear();
+      await forgetDevice();
       tellOtherTabs({ kind: 'signed-out' });
       window.location.replace('/sign-in');
     },

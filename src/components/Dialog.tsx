@@ -10,7 +10,8 @@ type Props = {
   onOpenChange: (open: boolean) => void;
   title: string;
   description?: string;
-  closeLabel: string;
+  /** Without it there is no cross: for what must not be closed before its own button says so. */
+  closeLabel?: string;
   children: ReactNode;
   /** The buttons that end it. */
   footer?: ReactNode;
@@ -43,9 +44,11 @@ export function Dialog({ open, onOpenChange, title, description, closeLabel, chi
           <div className={columnClass}>
             <div className="flex items-start justify-between gap-4">
               <RadixDialog.Title className="min-w-0 pt-2 text-xl leading-tight">{title}</RadixDialog.Title>
-              <RadixDialog.Close asChild>
-                <IconButton icon={X} label={closeLabel} />
-              </RadixDialog.Close>
+              {closeLabel === undefined ? null : (
+                <RadixDialog.Close asChild>
+                  <IconButton icon={X} label={closeLabel} />
+                </RadixDialog.Close>
+              )}
             </div>
             {description ? (
               <RadixDialog.Description className="text-ink-soft">{description}</RadixDialog.Description>

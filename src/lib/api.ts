@@ -14,13 +14,31 @@ export function setWriteToken(token: string | null): void {
   writeToken = token;
 }
 
+let carriedRecord: string | null = null;
+
+/** The record of somebody else that calls are about from now on; null for one's own. */
+export function setActingFor(recordId: string | null): void {
+  carriedRecord = recordId;
+}
+
+export const actingFor = (): string | null => carriedRecord;
+
 /** The server runs another build than the one this tab was loaded from. Carries the server's build. */
 export const buildAnnounced = createSignal<string>();
 
-/** The server did not accept this tab's session: it is over, or another one has taken its place. */
-export const sessionDoubted = createSignal<'not-signed-in' | 'foreign-request'>();
+/**
+ * The server did not accept this tab's session: it is over, or another one has taken its place. Or it found
+ * nothing on the record of somebody else, which may no longer be open to this person.
+ */
+export const sessionDoubted = createSignal<'not-signed-in' | 'foreign-request' | 'not-found'>();
 
 type Parts = { params?: unknown; query?: unknown; body?: unknown };
+
+type Options = {
+  signal?: AbortSignal | undefined;
+  /** Another record than the one this tab is on now; null for one's own. */
+  record?: string | null;
+};
 
 function textsOf(part: unknown): [string, string][] {
   return Object.entries((part ?? {}) as Record<string, unknown>)
@@ -37,8 +55,15 @@ function addressOf(path: string, { params, query }: Parts): string {
   return search === '' ? filled : `${filled}?${search}`;
 }
 
-async function send(method: Method, path: string, parts: Parts, signal: AbortSignal | undefined) {
+async function send(
+  method: Method,
+  path: string,
+  parts: Parts,
+  signal: AbortSignal | undefined,
+  record: string | null,
+) {
   const headers = new Headers({ accept: 'application/json' });
+  if (record !== null) headers.set('x-espalier-patient', record);
   // A write always declares JSON: the server takes nothing else, and no foreign page can send it.
   if (method !== 'get') headers.set('content-type', 'application/json');
   if (method !== 'get' && writeToken !== null) headers.set('x-espalier-session', writeToken);
@@ -77,16 +102,16 @@ export async function call<C extends Contract>(
   method: C['method'],
   path: C['path'],
   input: RequestOf<C>,
-  options: { signal?: AbortSignal } = {},
+  { signal, record = carriedRecord }: Options = {},
 ): Promise<OutputOf<C>> {
-  const response = await send(method, path, input, options.signal);
+  const response = await send(method, path, input, signal, record);
   noteServerDate(response.headers.get('date'));
   const build = response.headers.get('x-espalier-build');
   if (build !== null && build !== __BUILD_ID__) buildAnnounced.emit(build);
   if (response.ok) return (response.status === 204 ? undefined : await readJson(response)) as OutputOf<C>;
   const problem = new ApiProblem((await readJson(response)) as ProblemBody);
-  if (problem.code === 'not-signed-in' || problem.code === 'foreign-request') {
-    sessionDoubted.emit(problem.code);
-  }
+  const { code } = problem;
+  if (code === 'not-signed-in' || code === 'foreign-request') sessionDoubted.emit(code);
+  if (code === 'not-found' && record !== null) sessionDoubted.emit(code);
   throw problem;
 }

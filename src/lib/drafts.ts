@@ -1,13 +1,14 @@
 import { useState } from 'react';
 import { dropFromDevice, keepOnDevice, readFromDevice } from './device-store.ts';
+import type { Keeper } from './device-store.ts';
 
 /** A text that is not sent yet, under the id that it will be sent with, so that a repeat is the same message. */
 export type Draft = { id: string; text: string };
 
 const freshDraft = (text = ''): Draft => ({ id: crypto.randomUUID(), text });
 
-function readDraft(personId: string, name: string): Draft {
-  const kept = readFromDevice({ personId, onDevice: false }, name);
+function readDraft(keeper: Keeper, name: string): Draft {
+  const kept = readFromDevice({ ...keeper, onDevice: false }, name);
   if (typeof kept === 'object' && kept !== null && 'id' in kept && 'text' in kept) {
     const { id, text } = kept;
     if (typeof id === 'string' && typeof text === 'string') return { id, text };
@@ -25,15 +26,15 @@ export type DraftHandle = {
 };
 
 /**
- * The draft of one person in one place. It survives a reload of this tab and ends with the tab. A component
+ * The draft of one person, about one record, in one place. It survives a reload of this tab and ends with the tab. A component
  * that goes to another place must be made anew (by `key`).
  */
-export function useDraft(personId: string, place: string): DraftHandle {
+export function useDraft(keeper: Keeper, place: string): DraftHandle {
   const name = `draft:${place}`;
-  const [draft, setDraft] = useState(() => readDraft(personId, name));
+  const [draft, setDraft] = useState(() => readDraft(keeper, name));
   function keep(next: Draft) {
-    if (next.text === '') dropFromDevice(personId, name);
-    else keepOnDevice({ personId, onDevice: false }, name, next);
+    if (next.text === '') dropFromDevice(keeper, name);
+    else keepOnDevice({ ...keeper, onDevice: false }, name, next);
     setDraft(next);
   }
   return {

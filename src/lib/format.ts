@@ -12,6 +12,10 @@ function format(instant: Date, options: Intl.DateTimeFormatOptions): string {
 export const formatDate = (localDate: string): string =>
   format(asInstant(localDate), { day: 'numeric', month: 'short', timeZone: 'UTC' });
 
+/** "9 Mar 1957". */
+export const formatDateAndYear = (localDate: string): string =>
+  format(asInstant(localDate), { day: 'numeric', month: 'short', year: 'numeric', timeZone: 'UTC' });
+
 /** "Friday". */
 export const formatWeekday = (localDate: string): string =>
   format(asInstant(localDate), { weekday: 'long', timeZone: 'UTC' });

@@ -5,11 +5,11 @@ import app from '#src/locales/en/app.json';
 const languages = ['en'] as const;
 type Language = (typeof languages)[number];
 
-/** Each file of words is a chunk of its own, loaded with the screens that need it; the shell's are always there. */
-const files = import.meta.glob<{ default: Record<string, unknown> }>([
-  '../locales/*/*.json',
-  '!../locales/*/app.json',
-]);
+/**
+ * Each file of words is a chunk of its own, loaded with the screens that need it; the shell's are always there.
+ * The first load of Today knows where its own lie; the list of the others is fetched with the first of them.
+ */
+const filesOfToday = import.meta.glob<{ default: Record<string, unknown> }>('../locales/*/{today,plan}.json');
 
 /** Starts with the words of the shell; `loadWords` brings the rest. */
 export async function startI18n(): Promise<void> {
@@ -33,7 +33,8 @@ export async function loadWords(names: readonly string[]): Promise<void> {
     names
       .filter((name) => !i18next.hasResourceBundle(language, name))
       .map(async (name) => {
-        const load = files[`../locales/${language}/${name}.json`];
+        const path = `../locales/${language}/${name}.json`;
+        const load = filesOfToday[path] ?? (await import('./word-files.ts')).wordFiles[path];
         if (!load) throw new Error(`There are no words named "${name}" in "${language}".`);
         i18next.addResourceBundle(language, name, (await load()).default);
       }),

@@ -11,4 +11,12 @@ export const queryPrefixes = {
   flags: ['flags'],
   threads: ['threads'],
   worker: ['worker'],
+  patients: ['patients'],
+  people: ['people'],
+  twoPersonActs: ['two-person-acts'],
+  deliveries: ['deliveries'],
+  caregivers: ['caregivers'],
+  activity: ['activity'],
+  notificationSettings: ['notification-settings'],
+  pushSubscriptions: ['push-subscriptions'],
 } as const satisfies Record<string, readonly [string]>;

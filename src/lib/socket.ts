@@ -12,8 +12,21 @@ const touchedBy: Record<Hint['topic'], readonly PrefixName[]> = {
   flags: ['flags', 'today'],
   thread: ['threads', 'today', 'flags'],
   alert: ['alerts', 'today', 'flags'],
+  session: ['session'],
   today: ['today', 'plan', 'checkInContext'],
-  everything: ['today', 'plan', 'checkInContext', 'alerts', 'flags', 'threads', 'worker'],
+  everything: [
+    'today',
+    'plan',
+    'checkInContext',
+    'alerts',
+    'flags',
+    'threads',
+    'worker',
+    'patients',
+    'people',
+    'twoPersonActs',
+    'deliveries',
+  ],
 };
 
 /**

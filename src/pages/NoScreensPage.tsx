@@ -7,16 +7,20 @@ import { PageHeader } from '#src/components/PageHeader.tsx';
 
 /** For roles whose screens are not there yet: says so, and lets them sign out. */
 export function NoScreensPage() {
-  const { t } = useTranslation();
-  const heading = usePageHeading(t('noScreens.title'));
+  const { t } = useTranslation(['app', 'nowhere', 'leaving']);
+  const heading = usePageHeading(t('nowhere:noScreens.title'));
   const signOut = useSignOut();
   return (
     <main className="mx-auto grid max-w-3xl justify-items-start gap-5 p-5">
-      <PageHeader title={t('noScreens.title')} detail={t('noScreens.body')} headingRef={heading} />
+      <PageHeader
+        title={t('nowhere:noScreens.title')}
+        detail={t('nowhere:noScreens.body')}
+        headingRef={heading}
+      />
       <Button variant="outline" icon={LogOut} busy={signOut.isPending} onClick={() => signOut.mutate()}>
         {t('account.signOut')}
       </Button>
-      {signOut.isError ? <p role="alert">{t('signingOut.failed')}</p> : null}
+      {signOut.isError ? <p role="alert">{t('leaving:signingOut.failed')}</p> : null}
     </main>
   );
 }

@@ -4,7 +4,7 @@ import { LinkButton } from '#src/components/LinkButton.tsx';
 import { PageHeader } from '#src/components/PageHeader.tsx';
 
 export function NotFoundPage() {
-  const { t } = useTranslation();
+  const { t } = useTranslation('nowhere');
   const heading = usePageHeading(t('notFound.title'));
   return (
     <main className="mx-auto grid max-w-3xl justify-items-start gap-5 p-5">

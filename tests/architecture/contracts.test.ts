@@ -5,7 +5,7 @@ import type { Contract } from '#shared/http/contract.ts';
 import { isPublic } from '#server/http/route.ts';
 import { allRoutes } from '#server/routes.ts';
 
-const modules = import.meta.glob<Record<string, unknown>>('../../shared/**/contract.ts', { eager: true });
+const modules = import.meta.glob<Record<string, unknown>>('../../shared/**/*contract.ts', { eager: true });
 
 const isContract = (value: unknown): value is Contract =>
   typeof value === 'object' && value !== null && 'method' in value && 'path' in value && 'summary' in value;
@@ -32,7 +32,7 @@ it('gives each method and path to one contract only', () => {
 it('keeps every path below /api/, in lower case, with whole words', () => {
   const odd = contracts
     .map(({ path }) => path)
-    .filter((path) => !/^\/api(\/([a-z]+(-[a-z]+)*|:[a-z][A-Za-z]*Id))+$/.test(path));
+    .filter((path) => !/^\/api(\/([a-z]+(-[a-z]+)*|:[a-z][A-Za-z]*Id|:role))+$/.test(path));
   expect(odd).toEqual([]);
 });
 
@@ -54,6 +54,20 @@ it('reads with GET and writes with the others: only they take a body', () => {
   expect(contracts.filter(({ method, query }) => method !== 'get' && query).map(addressOf)).toEqual([]);
 });
 
+it('takes into an address no words that somebody typed: histories and logs keep addresses', () => {
+  const words = 'Zebedee Quillfeather';
+  const fields = contracts.flatMap((contract) =>
+    [contract.params, contract.query].flatMap((part) =>
+      Object.entries((part as z.ZodObject | undefined)?.shape ?? {}).map(([name, field]) => ({
+        where: `${addressOf(contract)}: ${name}`,
+        takesWords: (field as z.ZodType).safeParse(words).success,
+      })),
+    ),
+  );
+  expect(fields.length).toBeGreaterThan(20);
+  expect(fields.filter(({ takesWords }) => takesWords).map(({ where }) => where)).toEqual([]);
+});
+
 it('answers 204 without content and everything else with a declared one', () => {
   for (const contract of contracts) {
     expect(contract.output === undefined, addressOf(contract)).toBe(contract.status === 204);
@@ -73,7 +87,22 @@ it('keeps the public routes to the way in', () => {
       .filter(isPublic)
       .map(({ contract }) => addressOf(contract))
       .sort(),
-  ).toEqual(['get /api/session', 'get /api/sign-in-page', 'post /api/session']);
+  ).toEqual([
+    'get /api/session',
+    'get /api/sign-in-page',
+    'post /api/email-changes/use',
+    'post /api/invitations/accept',
+    'post /api/invitations/ask-again',
+    'post /api/invitations/look',
+    'post /api/invitations/passkey-question',
+    'post /api/password-resets',
+    'post /api/password-resets/use',
+    'post /api/session',
+    'post /api/session/passkey',
+    'post /api/session/passkey-question',
+    'post /api/session/second-factor',
+    'post /api/session/second-factor/passkey-question',
+  ]);
 });
 
 it('uses every permission at some route', () => {

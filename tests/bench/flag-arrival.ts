@@ -2,6 +2,7 @@ import { randomUUID } from 'node:crypto';
 import pg from 'pg';
 import { makeClinic, makePatient, makePerson } from '#tests/support/clinic.ts';
 import { cloneDatabase, prepareTemplate, silentLog } from '#tests/support/database.ts';
+import { testSecrets } from '#tests/support/secrets.ts';
 import { startWeb } from '#tests/support/web.ts';
 import { startWork } from '#workers/work.ts';
 
@@ -31,11 +32,14 @@ if (!superUrl) throw new Error('Run it as `npm run bench`.');
 await prepareTemplate(superUrl);
 const database = await cloneDatabase();
 const web = await startWeb(database);
-const noMail = { send: () => Promise.resolve(), close: () => undefined };
+const nowhere = { send: () => Promise.resolve({ providerId: null }), close: () => undefined };
 const work = await startWork({
   databaseUrl: database.urls.app,
-  pools: database.pools,
-  mailer: noMail,
+  tools: {
+    pools: database.pools,
+    channels: { email: nowhere, push: nowhere, sms: nowhere, phone: nowhere },
+    tokenSecret: testSecrets.tokenSecret,
+  },
   clock: () => new Date(),
   log: silentLog,
 });

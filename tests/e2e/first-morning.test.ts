@@ -1,6 +1,7 @@
 import { expect } from '@playwright/test';
 import { test } from '#tests/support/e2e.ts';
 import { desk, phone, signIn, watch, tick } from './people.ts';
+import { wakeAtAnyHour } from './push-device.ts';
 
 test('a fall on the phone reaches the open round, and the reply reaches the phone, without a reload', async ({
   browser,
@@ -27,6 +28,7 @@ test('a fall on the phone reaches the open round, and the reply reaches the phon
   await expect(row).toHaveCount(0);
 
   await signIn(patient, product, 'Tobias Ahlgren');
+  await wakeAtAnyHour(patient, product);
   await patient.getByRole('link', { name: 'Start today’s check-in' }).click();
   await patient.getByRole('button', { name: '8', exact: true }).click();
   await patient.getByRole('heading', { name: /worst pain/ }).waitFor();
@@ -94,7 +96,7 @@ test('a fall on the phone reaches the open round, and the reply reaches the phon
     .toContain('Espalier: a message is waiting');
   // The addresses that mail goes to are left out of the look: an address may hold its owner's name.
   const outbox = (await (await therapist.request.get('/outbox')).text()).replaceAll(/<dd>[^<]*<\/dd>/g, '');
-  expect(outbox).toContain('Espalier: a flag is waiting');
+  expect(outbox).toContain('Espalier: an urgent flag is waiting');
   expect(outbox).not.toMatch(/Tobias|Ahlgren|fall|pain|sling|shoulder|noon/i);
 
   expect(patientWatch.complaints).toEqual([]);

@@ -1,5 +1,6 @@
 import { expect, type Page } from '@playwright/test';
 import type { Product } from '#tests/support/product.ts';
+import { hasAuthenticator, nextCode } from './codes.ts';
 
 export const phone = { width: 390, height: 844 };
 export const desk = { width: 1440, height: 900 };
@@ -10,13 +11,23 @@ const accountOf = ({ accounts }: Product, name: string) => {
   return account;
 };
 
-/** Signs in through the form, and waits until the first screen of that person stands. */
-export const signIn = async (page: Page, product: Product, name: string): Promise<void> => {
+/** Gives e-mail and password; staff stand before their second step then. */
+export const givePassword = async (page: Page, product: Product, name: string): Promise<void> => {
   const { email, password } = accountOf(product, name);
   await page.goto('/sign-in');
   await page.getByLabel('E-mail').fill(email);
   await page.getByLabel('Password', { exact: true }).fill(password);
-  await page.getByRole('button', { name: 'Sign in' }).click();
+  await page.getByRole('button', { name: 'Sign in', exact: true }).click();
+};
+
+/** Signs in through the form, staff with a code of their app, and waits until the person's first screen stands. */
+export const signIn = async (page: Page, product: Product, name: string): Promise<void> => {
+  const { email } = accountOf(product, name);
+  await givePassword(page, product, name);
+  if (hasAuthenticator(email)) {
+    const code = await nextCode(product, email);
+    await page.getByLabel('Code of six digits').fill(code);
+  }
   await expect(page).not.toHaveURL(/sign-in/);
   await expect(page.getByRole('heading', { level: 1 })).toBeVisible();
 };

@@ -15,7 +15,7 @@ test('a wrong password gets the same words whether or not the account exists, an
     await page.goto('/sign-in');
     await page.getByLabel('E-mail').fill(email);
     await page.getByLabel('Password', { exact: true }).fill('not the passphrase at all');
-    await page.getByRole('button', { name: 'Sign in' }).click();
+    await page.getByRole('button', { name: 'Sign in', exact: true }).click();
     const alert = page.getByText('That e-mail and password do not match.', { exact: false });
     await expect(alert).toBeVisible();
     answers.push(await alert.textContent());
@@ -75,7 +75,7 @@ test('an old tab is told to reload after an update, but never in mid-form', asyn
       headers: { ...response.headers(), 'x-espalier-build': 'a-newer-build' },
     });
   });
-  const banner = page.getByText('A new version of Espalier is ready.');
+  const banner = page.getByText('Espalier was updated.');
   await page.goto('/check-in');
   await page.getByRole('button', { name: '1', exact: true }).click();
   await expect(page.getByRole('heading', { name: /worst pain/ })).toBeVisible();

@@ -1,34 +1,34 @@
-import AxeBuilder from '@axe-core/playwright';
+import { randomUUID } from 'node:crypto';
 import { expect, type Page } from '@playwright/test';
+import type { endCaregiver, inviteCaregiver } from '#shared/caregivers/contract.ts';
 import { test } from '#tests/support/e2e.ts';
-import { desk, emergencyLine, phone, signIn, watch, tick } from './people.ts';
+import type { Product } from '#tests/support/product.ts';
+import { inspect, inspectPlace, looks } from './inspect.ts';
+import { linkMailedTo } from './outbox.ts';
+import { callAs } from './own-session.ts';
+import { emergencyLine, givePassword, signIn, tick, watch } from './people.ts';
 
-/** WCAG 2.2 A and AA, as axe-core tags its rules. */
-const standards = ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa'];
-
-const looks = [
-  { name: '390 px, light', viewport: phone, colorScheme: 'light' },
-  { name: '390 px, dark', viewport: phone, colorScheme: 'dark' },
-  { name: '1440 px, light', viewport: desk, colorScheme: 'light' },
-  { name: '1440 px, dark', viewport: desk, colorScheme: 'dark' },
-] as const;
-
-const inspect = async (page: Page, screen: string): Promise<void> => {
-  await page.evaluate(() => document.fonts.ready.then(() => undefined));
-  const { scrollWidth, clientWidth, scrollHeight } = await page.evaluate(() => {
-    const { scrollWidth, clientWidth, scrollHeight } = document.documentElement;
-    return { scrollWidth, clientWidth, scrollHeight };
-  });
-  expect(scrollWidth - clientWidth, `${screen} scrolls sideways`).toBeLessThanOrEqual(0);
-  // The whole page at once: what lies half under the bar at the foot until one scrolls is no small target.
-  const seen = page.viewportSize() ?? desk;
-  await page.setViewportSize({ width: seen.width, height: Math.max(seen.height, scrollHeight) });
-  const { violations } = await new AxeBuilder({ page }).withTags(standards).analyze();
-  await page.setViewportSize(seen);
-  const found = violations.map(
-    ({ id, nodes }) => `${id}: ${nodes.map(({ target }) => target.join(' ')).join(', ')}`,
-  );
-  expect(found, screen).toEqual([]);
+/** The link of an invitation of a caregiver of this page's patient that a newer one has replaced. */
+const replacedInvitation = async (page: Page, product: Product): Promise<string> => {
+  const email = `${randomUUID()}@next-door.example`;
+  const invite = () =>
+    callAs<typeof inviteCaregiver>(page, product, 'post', '/api/caregivers', {
+      body: {
+        id: randomUUID(),
+        name: 'Percival Thackeray',
+        email,
+        relationship: 'brother',
+        mayCheckIn: true,
+        mayMessage: false,
+        until: null,
+      },
+    });
+  const { id } = await invite();
+  const link = await linkMailedTo(product, email, 'Espalier: you are invited');
+  const params = { caregiverId: id };
+  await callAs<typeof endCaregiver>(page, product, 'delete', '/api/caregivers/:caregiverId', { params });
+  await invite();
+  return link;
 };
 
 // A dozen screens in one walk, each searched by axe.
@@ -38,10 +38,61 @@ for (const { name, viewport, colorScheme } of looks) {
   test.describe(name, () => {
     test.use({ viewport, colorScheme, reducedMotion: 'reduce' });
 
+    test('axe and the content policy find nothing on the ways in', async ({ page, product }) => {
+      const { complaints } = await watch(page);
+      await inspectPlace(page, '/sign-in', 'Sign in');
+      await inspectPlace(page, '/start', 'Start with your letter');
+      await inspectPlace(page, '/forgot-password', 'Choose a new password');
+      await givePassword(page, product, 'Petra Lindqvist');
+      await expect(page.getByLabel('Code of six digits')).toBeVisible();
+      await inspect(page, 'second step');
+      await signIn(page, product, 'Teo Valcourt');
+      await inspectPlace(page, '/caring', 'Who are you here for?');
+      await page.getByRole('button', { name: 'Ruth Abramowicz' }).click();
+      await expect(page.getByText('For Ruth Abramowicz', { exact: true })).toBeVisible();
+      await expect(page.getByRole('heading', { name: 'Hold off for now' })).toBeVisible();
+      await inspect(page, 'Today of somebody else');
+      expect(complaints).toEqual([]);
+    });
+
+    test('axe and the content policy find nothing on a patient’s account', async ({ page, product }) => {
+      const { complaints } = await watch(page);
+      await signIn(page, product, 'Gwen Thackeray');
+      const spent = await replacedInvitation(page, product);
+      await inspectPlace(page, '/account', 'Your account');
+      await inspectPlace(
+        page,
+        '/account/sign-in',
+        'Sign-in and devices',
+        page.getByText('This one', { exact: true }),
+      );
+      await inspectPlace(
+        page,
+        '/account/notifications',
+        'How we reach you',
+        page.getByRole('button', { name: 'Save' }),
+      );
+      await inspectPlace(page, '/account/caregivers', 'People who help me', page.getByText(/Ended on/));
+      await page.getByRole('button', { name: 'Invite someone' }).click();
+      await expect(page.getByLabel('Their e-mail')).toBeVisible();
+      await inspect(page, 'form for a caregiver');
+      await inspectPlace(
+        page,
+        '/account/activity',
+        'Who opened my record',
+        page.getByLabel('Show what I did too'),
+      );
+      await tick(page, 'Show what I did too');
+      await expect(page.getByRole('main').getByRole('listitem').first()).toBeVisible();
+      await inspect(page, 'activity with one’s own');
+      await page.goto(spent);
+      await expect(page.getByRole('heading', { name: 'This invitation no longer works' })).toBeVisible();
+      await inspect(page, 'replaced invitation');
+      expect(complaints).toEqual([]);
+    });
+
     test('axe and the content policy find nothing on the patient’s screens', async ({ page, product }) => {
       const { complaints } = await watch(page);
-      await page.goto('/sign-in');
-      await inspect(page, 'sign-in');
       await signIn(page, product, 'Gwen Thackeray');
       await expect(emergencyLine(page)).toBeVisible();
       await inspect(page, 'Today');
@@ -51,9 +102,7 @@ for (const { name, viewport, colorScheme } of looks) {
         ['/messages/new', /message/i],
         ['/nowhere', /./],
       ] as const) {
-        await page.goto(path);
-        await expect(page.getByRole('heading', { level: 1, name: heading })).toBeVisible();
-        await inspect(page, path);
+        await inspectPlace(page, path, heading);
       }
       await page.goto('/check-in');
       await inspect(page, 'pain now');
@@ -83,29 +132,6 @@ for (const { name, viewport, colorScheme } of looks) {
       await page.getByRole('button', { name: 'Go on with the check-in' }).click();
       await expect(page.getByRole('button', { name: 'Send' })).toBeVisible();
       await inspect(page, 'review');
-      expect(complaints).toEqual([]);
-    });
-
-    test('axe and the content policy find nothing on the clinic’s screens', async ({ page, product }) => {
-      const { complaints } = await watch(page);
-      await signIn(page, product, 'Petra Lindqvist');
-      await expect(page).toHaveURL(/round/);
-      await inspect(page, 'morning round');
-      await page.locator('a[href^="/round/"]').first().click();
-      await expect(page.getByRole('heading', { name: 'What next' })).toBeVisible();
-      await inspect(page, 'case');
-      await page.keyboard.press('?');
-      await expect(page.getByRole('dialog')).toBeVisible();
-      await inspect(page, 'keys');
-      await page.keyboard.press('Escape');
-      await page.goto('/clinic/messages');
-      await expect(page.getByRole('heading', { level: 1, name: 'Messages' })).toBeVisible();
-      await inspect(page, 'messages');
-      await page.locator('a[href^="/clinic/messages/"]').first().click();
-      await expect(page.getByRole('textbox')).toBeVisible();
-      await inspect(page, 'thread');
-      await page.goto('/outbox');
-      await inspect(page, 'outbox');
       expect(complaints).toEqual([]);
     });
   });

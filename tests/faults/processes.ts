@@ -1,3 +1,4 @@
+import { testSecrets, testVapidPrivateKey } from '#tests/support/secrets.ts';
 import { spawn } from 'node:child_process';
 import { createInterface } from 'node:readline';
 import type { Me } from '#shared/accounts/contract.ts';
@@ -73,6 +74,10 @@ const databaseUrls = ({ urls }: TestDatabase) => ({
   APP_DATABASE_URL: urls.app,
   GATE_DATABASE_URL: urls.gate,
 });
+const secretsOfBoth = {
+  TOKEN_SECRET: testSecrets.tokenSecret,
+  VAPID_PUBLIC_KEY: testSecrets.vapidPublicKey,
+};
 const publicUrl = 'http://localhost:4600';
 
 export const startWebProcess = async (database: TestDatabase): Promise<RealProcess & { url: string }> => {
@@ -81,6 +86,8 @@ export const startWebProcess = async (database: TestDatabase): Promise<RealProce
     PORT: '0',
     PUBLIC_URL: publicUrl,
     SESSION_SECRET: 'test-session-secret-of-32-characters',
+    ...secretsOfBoth,
+    SEAL_SECRET: testSecrets.sealSecret,
     LOG_LEVEL: 'debug',
   });
   const { address } = JSON.parse(await web.says('"msg":"web ready"')) as { address: { port: number } };
@@ -91,6 +98,8 @@ export const startWorkerProcess = async (database: TestDatabase, smtpUrl: string
   const worker = startProcess('workers/index.ts', {
     ...databaseUrls(database),
     SMTP_URL: smtpUrl,
+    ...secretsOfBoth,
+    VAPID_PRIVATE_KEY: testVapidPrivateKey,
     PUBLIC_URL: publicUrl,
     LOG_LEVEL: 'debug',
   });

@@ -170,3 +170,8 @@ export const plantThread = async (
     );
   return { threadId };
 };
+
+/** As a worker leaves what it has sent: what comes after that is told by a word of its own. */
+export const markTold = async ({ asSuperuser }: TestDatabase): Promise<void> => {
+  await asSuperuser.query(`update notifications set state = 'sent', sent_at = now() where state = 'pending'`);
+};

@@ -1,13 +1,16 @@
+import { randomUUID } from 'node:crypto';
 import { createServer } from 'node:http';
 import type { AddressInfo } from 'node:net';
 import { io, type Socket } from 'socket.io-client';
-import type { Me } from '#shared/accounts/contract.ts';
+import type { Me, SignInStep } from '#shared/accounts/contract.ts';
 import type { Method } from '#shared/http/contract.ts';
 import { hintEvent, sessionEndedEvent, type Hint } from '#shared/realtime/hints.ts';
 import { createApp } from '#server/app.ts';
+import { codeHashOf } from '#server/features/accounts/one-time-tokens.ts';
 import { listenForHints } from '#server/realtime/bridge.ts';
 import { openSockets } from '#server/realtime/sockets.ts';
 import { testPassword } from './clinic.ts';
+import { testSecrets } from './secrets.ts';
 import { silentLog, type TestDatabase } from './database.ts';
 
 export type Answer = { status: number; headers: Headers; body: unknown; text: string };
@@ -33,6 +36,24 @@ export type TestBrowser = {
   }>;
 };
 
+/** Plants a recovery code for whoever has a second factor, and gives it. */
+const giveRecoveryCode = async (
+  { asSuperuser }: TestDatabase,
+  browser: TestBrowser,
+  email: string,
+  pendingId: string,
+): Promise<void> => {
+  const code = randomUUID();
+  await asSuperuser.query(
+    `insert into recovery_codes (clinic_id, person_id, code_hash)
+     select clinic_id, person_id, $2 from credentials where email = $1`,
+    [email, codeHashOf(testSecrets.sealSecret, code)],
+  );
+  const answer = { way: 'recovery-code', code };
+  const given = await browser.call('post', '/api/session/second-factor', { pendingId, answer });
+  if (given.status !== 201) throw new Error(`The second factor failed: ${given.status} ${given.text}`);
+};
+
 /** A whole web in this process, over a test's own database, with a clock that the test may move. */
 export const startWeb = async (
   database: TestDatabase,
@@ -49,6 +70,7 @@ export const startWeb = async (
     log: silentLog,
     publicUrl: url,
     sessionSecret: 'test-session-secret-of-32-characters',
+    ...testSecrets,
     buildId: options.buildId ?? 'test',
   });
   server.on('request', app);
@@ -133,7 +155,16 @@ export const startWeb = async (
       const self = browser();
       const answer = await self.call('post', '/api/session', { email, password: testPassword });
       if (answer.status !== 201) throw new Error(`Signing in failed: ${answer.status} ${answer.text}`);
-      self.me = (answer.body as { me: Me }).me;
+      const step = answer.body as SignInStep;
+      if (step.next === 'second-factor') await giveRecoveryCode(database, self, email, step.pendingId);
+      // The second factor has tests of its own; here staff have given it.
+      await database.asSuperuser.query(
+        `update signed_in_sessions set second_factor = 'authenticator'
+         where second_factor is null and person_id = (select person_id from credentials where email = $1)`,
+        [email],
+      );
+      const session = await self.call('get', '/api/session');
+      self.me = (session.body as { me: Me }).me;
       return self;
     },
     stop: async () => {

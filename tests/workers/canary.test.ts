@@ -12,10 +12,11 @@ import {
   type RealProcess,
 } from '../faults/processes.ts';
 import { alertBody, checkInBody } from '../server/check-ins/bodies.ts';
+import { fillForms, formCanaries, keptInAudit } from './canary-forms.ts';
 import { startMailServer, type MailServer } from './mail-server.ts';
 
-/** Words that stand nowhere else, in a name, a note, messages, a subject and an outcome. */
-const canaries = ['Zebedee', 'Quillfeather', 'ferret', 'crocodile', 'marzipan', 'bassoon'];
+/** Words that stand nowhere else, in a name, a note, messages, a subject, an outcome and every field of the forms. */
+const canaries = ['Zebedee', 'Quillfeather', 'ferret', 'crocodile', 'marzipan', 'bassoon', ...formCanaries];
 const patientName = 'Zebedee Quillfeather';
 const note = 'My ferret tripped me on the stairs.\n    at ferret (stairs.js:1:1)';
 const text = 'The crocodile ate my sling.\n    at crocodile (sling.js:1:1)';
@@ -24,8 +25,8 @@ const outcomeNote = 'Spoke to the bassoon player.';
 
 let database: TestDatabase;
 let mailServer: MailServer;
-let web: Awaited<ReturnType<typeof startWebProcess>>;
-let worker: RealProcess;
+let web: Awaited<ReturnType<typeof startWebProcess>> | undefined;
+let worker: RealProcess | undefined;
 let listening: pg.Client;
 const hintPayloads: string[] = [];
 const problemBodies: string[] = [];
@@ -66,12 +67,20 @@ beforeAll(async () => {
   const clinicId = await makeClinic(database);
   const lead = await makePerson(database, clinicId, ['therapist', 'on-call-clinician']);
   const patient = await makePatient(database, clinicId, { lead, name: patientName });
-  [web, worker] = await Promise.all([
-    startWebProcess(database),
-    startWorkerProcess(database, mailServer.url),
-  ]);
-  const phone = calling(await signInAt(web.url, patient));
-  const desk = calling(await signInAt(web.url, lead));
+  const administrator = await makePerson(database, clinicId, ['administrator']);
+  const stranger = await makePatient(database, clinicId);
+  // One after the other, so that the web is stopped also when the worker does not start.
+  web = await startWebProcess(database);
+  const served = web;
+  worker = await startWorkerProcess(database, mailServer.url);
+  const phone = calling(await signInAt(served.url, patient));
+  const desk = calling(await signInAt(served.url, lead));
+  const office = calling(await signInAt(served.url, administrator));
+  // The second factor and the fresh proof have tests of their own; here they were given.
+  await database.asSuperuser.query(
+    `update signed_in_sessions set second_factor = 'authenticator', proven_at = now()`,
+  );
+  await fillForms({ desk, office, phone, lead, strangerId: stranger.patientId });
 
   // What goes well.
   const checkIn = checkInBody({ answers: { symptoms: ['changed-shape'], painNow: 8, note } });
@@ -119,7 +128,7 @@ beforeAll(async () => {
   await failInserts('flags', async () => {
     mailServer.refuse(true);
     await phone('post', '/api/check-ins', checkInBody({ answers: { symptoms: ['fall'], note } }));
-    await until(async () => expect(worker.lines.some((line) => line.includes('a job failed'))).toBe(true));
+    await until(async () => expect(worker?.lines.some((line) => line.includes('a job failed'))).toBe(true));
   });
   await desk('post', `${flag}/close`, { outcome: 'no-action-needed', worthRaising: 'no', note: outcomeNote });
   await until(async () => expect(await countOf('select from flags')).toBe(2));
@@ -127,11 +136,13 @@ beforeAll(async () => {
     expect(await countOf('select from notifications where last_error is not null')).toBeGreaterThan(0),
   );
   mailServer.refuse(false);
-  await until(async () => expect(await countOf(`select from notifications where state <> 'sent'`)).toBe(0));
+  // Failed tries come again after their pauses, as for everybody; nobody waits here for the long ones.
+  await database.asSuperuser.query(`update notifications set due_at = now() where state = 'pending'`);
+  await until(async () => expect(await countOf(`select from notifications where state = 'pending'`)).toBe(0));
 }, 120_000);
 
 afterAll(async () => {
-  await Promise.all([web.stop(), worker.stop()]);
+  await Promise.all([web?.stop(), worker?.stop()]);
   await listening.end();
   await mailServer.stop();
   await database.drop();
@@ -150,25 +161,33 @@ describe("a made-up patient's name, note, messages, subject and outcome", () => 
       ...(await rowsOf('messages')),
       ...(await rowsOf('threads')),
       ...(await rowsOf('flag_events')),
+      ...(await rowsOf('patients')),
+      ...(await rowsOf('operation_cards')),
+      ...(await rowsOf('caregivers')),
+      ...(await rowsOf('patient_state_changes')),
+      ...(await rowsOf('chart_openings')),
+      ...(await rowsOf('two_person_acts')),
     ].join('\n');
     for (const canary of canaries) expect(kept).toContain(canary);
-    expect(new Set(statuses)).toEqual(new Set([200, 201, 400, 404, 409, 422, 500]));
+    expect(new Set(statuses)).toEqual(new Set([200, 201, 204, 400, 403, 404, 409, 422, 500]));
   });
 
-  it.each<[where: string, what: () => Promise<string[]> | string[]]>([
+  it.each<[where: string, what: () => Promise<string[]> | string[], but?: string[]]>([
     ['a mail, sent or refused', () => mailServer.raw],
     ['a job', () => rowsOf('jobs.job')],
     ['a notification', () => rowsOf('notifications')],
-    ['an audit entry', () => rowsOf('audit_entries')],
-    ["the web's log", () => web.lines],
-    ["the worker's log", () => worker.lines],
+    ['an audit entry', () => rowsOf('audit_entries'), keptInAudit],
+    ["the web's log", () => web?.lines ?? []],
+    ["the worker's log", () => worker?.lines ?? []],
     ['a hint on its way to the webs', () => hintPayloads],
     ['the body of a problem', () => problemBodies],
-  ])('are not in %s', async (_where, what) => {
+  ])('are not in %s', async (_where, what, but = []) => {
     const all = await what();
     expect(all.length).toBeGreaterThan(0);
     for (const one of all) {
-      for (const canary of canaries) expect(one.toLowerCase()).not.toContain(canary.toLowerCase());
+      for (const canary of canaries.filter((word) => !but.includes(word))) {
+        expect(one.toLowerCase()).not.toContain(canary.toLowerCase());
+      }
     }
   });
 
@@ -178,6 +197,9 @@ describe("a made-up patient's name, note, messages, subject and outcome", () => 
       'Espalier: a flag is waiting',
       'Espalier: a message is waiting',
       'Espalier: an emergency flag is waiting',
+      'Espalier: an urgent flag is waiting',
+      'Espalier: you are invited',
+      'Espalier: your clinic has closed your record',
     ]);
     for (const mail of mailServer.mails) {
       const words = [mail.subject, mail.text, mail.html ?? ''].join(' ').toLowerCase();

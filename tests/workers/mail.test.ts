@@ -1,6 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, it, vi } from 'vitest';
-import { openMailer, type Mailer } from '#server/notifications/mailer.ts';
+import type { Channel } from '#server/notifications/channels.ts';
+import { openEmail } from '#server/notifications/email.ts';
 import { notify } from '#server/notifications/service.ts';
 import { withTx } from '#server/db/with-tx.ts';
 import { startWork } from '#workers/work.ts';
@@ -14,6 +15,15 @@ import {
 import { cloneDatabase, silentLog, type TestDatabase } from '#tests/support/database.ts';
 import { startWeb, type TestWeb } from '#tests/support/web.ts';
 import { checkInBody } from '../server/check-ins/bodies.ts';
+import {
+  almostGivenUp,
+  listeners,
+  refuseMarking,
+  rowOfOccasion,
+  tellOf,
+  toolsWith,
+  waiting,
+} from './mail-scene.ts';
 import { messageIds, startMailServer, type MailServer } from './mail-server.ts';
 
 const within = { timeout: 15_000, interval: 50 };
@@ -21,7 +31,9 @@ const within = { timeout: 15_000, interval: 50 };
 let database: TestDatabase;
 let web: TestWeb;
 let mailServer: MailServer;
-let mailer: Mailer;
+let email: Channel;
+/** How far the worker's clock is ahead, in milliseconds: pauses between tries are not waited for. */
+let ahead: number;
 let work: { stop: () => Promise<void> } | null = null;
 let clinicId: string;
 let noor: TestPerson;
@@ -31,8 +43,6 @@ beforeAll(async () => {
   database = await cloneDatabase();
   web = await startWeb(database);
   clinicId = await makeClinic(database);
-  // Waiting for the next try is the queue's own; here it comes at once.
-  await database.asSuperuser.query('update jobs.queue set retry_delay = 0, retry_backoff = false');
 });
 
 afterAll(async () => {
@@ -42,7 +52,8 @@ afterAll(async () => {
 
 beforeEach(async () => {
   mailServer = await startMailServer();
-  mailer = openMailer({
+  ahead = 0;
+  email = openEmail({
     smtpUrl: mailServer.url,
     from: 'Espalier <no-reply@espalier.example>',
     publicUrl: 'https://espalier.example',
@@ -54,49 +65,26 @@ beforeEach(async () => {
 afterEach(async () => {
   await work?.stop();
   work = null;
-  mailer.close();
+  email.close();
   await mailServer.stop();
   await database.asSuperuser.query('delete from jobs.job');
+  await database.asSuperuser.query('delete from notifications');
 });
 
-const startWorker = async () => {
+const startWorker = async (options: { sendAtOnce?: number } = {}) => {
   work = await startWork({
     databaseUrl: database.urls.app,
-    pools: database.pools,
-    mailer,
-    clock: () => new Date(),
+    tools: toolsWith(database, email),
+    clock: () => new Date(Date.now() + ahead),
     log: silentLog,
+    ...options,
   });
 };
-const jobs = async (states: string[]) => {
-  const { rowCount } = await database.asSuperuser.query(
-    `select from jobs.job where state::text = any($1) and name in ('send-notification', 'evaluate-check-in')`,
-    [states],
-  );
-  return rowCount;
-};
-const allDone = () =>
-  vi.waitFor(async () => expect(await jobs(['created', 'retry', 'active'])).toBe(0), within);
-const tell = async (person: TestPerson): Promise<string> => {
-  const occasion = `message:${randomUUID()}`;
-  await withTx(database.pools.app, { kind: 'system', clinicId }, (tx) =>
-    notify(
-      tx,
-      clinicId,
-      [person.personId],
-      { kind: 'new-message', occasion, path: '/messages/1' },
-      new Date(),
-    ),
-  );
-  return occasion;
-};
-const rowOf = async (occasion: string) => {
-  const { rows } = await database.asSuperuser.query<Record<string, unknown>>(
-    'select state, attempts, last_error, sent_at is not null as has_time from notifications where occasion = $1',
-    [occasion],
-  );
-  return rows[0];
-};
+const allDone = () => vi.waitFor(async () => expect(await waiting(database)).toBe(0), within);
+const tell = (person: TestPerson) => tellOf(database, person);
+const rowOf = (occasion: string) => rowOfOccasion(database, occasion);
+const reaches = (occasion: string, row: object) =>
+  vi.waitFor(async () => expect(await rowOf(occasion)).toMatchObject(row), within);
 
 describe('the worker', () => {
   it('mails the care team once about a new flag, and the patient once about the answer', async () => {
@@ -147,18 +135,21 @@ describe('the worker', () => {
     mailServer.refuse(true);
     await startWorker();
     const occasion = await tell(noor);
-    await vi.waitFor(() => expect(mailServer.raw.length).toBeGreaterThanOrEqual(3), within);
+    const tried = (times: number) => reaches(occasion, { attempts: times, leased: false });
+    await tried(1);
+    ahead += 5_000;
+    await tried(2);
+    ahead += 15_000;
+    await tried(3);
+    expect(mailServer.raw).toHaveLength(3);
     expect(await rowOf(occasion)).toMatchObject({
       state: 'pending',
       last_error: 'EMESSAGE',
       has_time: false,
     });
     mailServer.refuse(false);
-    await vi.waitFor(
-      async () =>
-        expect(await rowOf(occasion)).toMatchObject({ state: 'sent', last_error: null, has_time: true }),
-      within,
-    );
+    ahead += 30_000;
+    await reaches(occasion, { state: 'sent', last_error: null, has_time: true });
     await allDone();
     expect(mailServer.mails).toHaveLength(1);
     const ids = messageIds(mailServer);
@@ -169,17 +160,16 @@ describe('the worker', () => {
   it('leaves after the last refusal a row that says that it failed and how, in no foreign words', async () => {
     mailServer.refuse(true);
     const occasion = await tell(noor);
-    // As if the first twelve tries were over: this is the last one.
-    await database.asSuperuser.query(`update jobs.job set retry_count = 12 where name = 'send-notification'`);
+    await almostGivenUp(database, occasion);
     await startWorker();
     await vi.waitFor(async () => expect((await rowOf(occasion))?.state).toBe('failed'), within);
     expect(await rowOf(occasion)).toEqual({
       state: 'failed',
-      attempts: 1,
+      attempts: 10,
       last_error: 'EMESSAGE',
       has_time: false,
+      leased: false,
     });
-    await vi.waitFor(async () => expect(await jobs(['failed'])).toBe(1), within);
     mailServer.refuse(false);
     await allDone();
     expect(mailServer.mails).toEqual([]);
@@ -188,31 +178,33 @@ describe('the worker', () => {
   it('counts a mail server that is not there as a refusal', async () => {
     await mailServer.stop();
     const occasion = await tell(noor);
-    await database.asSuperuser.query(`update jobs.job set retry_count = 12 where name = 'send-notification'`);
+    await almostGivenUp(database, occasion);
     await startWorker();
-    await vi.waitFor(
-      async () => expect(await rowOf(occasion)).toMatchObject({ state: 'failed', last_error: 'ESOCKET' }),
-      within,
-    );
+    await reaches(occasion, { state: 'failed', last_error: 'ESOCKET' });
   });
 
   it('sends again under the same message id what it could not mark as sent', async () => {
-    await database.asSuperuser.query('revoke update on notifications from espalier_app');
+    const marking = await refuseMarking(database);
     await startWorker();
     const occasion = await tell(noor);
-    await vi.waitFor(() => expect(mailServer.mails.length).toBeGreaterThanOrEqual(2), within);
-    await database.asSuperuser.query('grant update on notifications to espalier_app');
+    await vi.waitFor(async () => expect(await marking.wasRefused()).toBe(true), within);
+    await marking.allow();
+    expect(mailServer.mails).toHaveLength(1);
+    expect(await rowOf(occasion)).toMatchObject({ state: 'pending', leased: true });
+    ahead += 60_000;
     await vi.waitFor(async () => expect((await rowOf(occasion))?.state).toBe('sent'), within);
     await allDone();
+    expect(mailServer.mails).toHaveLength(2);
     expect(new Set(messageIds(mailServer)).size).toBe(1);
   });
 
-  it('sends nothing to somebody who has left, and nothing twice for one occasion', async () => {
-    await tell(noor);
+  it('sends nothing to somebody who has left', async () => {
+    const occasion = await tell(noor);
     await database.asSuperuser.query('update people set active = false where id = $1', [noor.personId]);
     await startWorker();
     await allDone();
     expect(mailServer.raw).toEqual([]);
+    expect(await rowOf(occasion)).toMatchObject({ state: 'dropped' });
   });
 
   it('goes on after the database has ended all of its connections', async () => {
@@ -222,6 +214,7 @@ describe('the worker', () => {
        where datname = current_database() and application_name in ('espalier-queue', 'espalier-jobs')`,
     );
     expect(ended.rowCount).toBeGreaterThanOrEqual(2);
+    await vi.waitFor(async () => expect(await listeners(database)).toBe(1), within);
     const occasion = await tell(noor);
     await vi.waitFor(async () => expect((await rowOf(occasion))?.state).toBe('sent'), within);
     expect(mailServer.mails).toHaveLength(1);
@@ -240,10 +233,16 @@ it('sends an emergency’s mail before what was waiting already, and drains the 
   await withTx(database.pools.app, { kind: 'system', clinicId }, async (tx) => {
     for (let n = 0; n <= 40; n += 1) {
       const kind = n === 40 ? 'new-emergency' : 'new-message';
-      await notify(tx, clinicId, [noor.personId], { kind, occasion: `waiting:${n}`, path: '/' }, new Date());
+      await notify(
+        tx,
+        clinicId,
+        [noor.personId],
+        { kind, occasion: `waiting:${n}`, path: `/${n}` },
+        new Date(),
+      );
     }
   });
-  await startWorker();
+  await startWorker({ sendAtOnce: 1 });
   // At one mail a second, as the queue polls, forty would take forty seconds.
   await vi.waitFor(() => expect(mailServer.mails).toHaveLength(41), within);
   expect(mailServer.mails[0]?.subject).toContain('emergency');

@@ -15,7 +15,7 @@ export const auditEntries = pgTable(
     subjectId: uuid(),
     patientId: uuid(),
     detail: jsonb().$type<Record<string, string | number | boolean | null>>(),
-    /** Set for chart openings: repeats within five minutes join into one entry. */
+    /** Set for openings of charts and lists: repeats within five minutes join into one entry. */
     joinKey: text(),
   },
   (table) => [

@@ -9,6 +9,8 @@ export const clinics = pgTable('clinics', {
   crisisNumber: text().notNull(),
   onCallNumber: text().notNull(),
   phone: text().notNull(),
+  /** ISO 3166: how a telephone number without a country code is read. */
+  country: text().notNull().default('US'),
   openingHours: jsonb().$type<OpeningHours>().notNull(),
   /** The demo clinic may be emptied and filled again; no other ever is. */
   isDemo: boolean().notNull().default(false),

@@ -10,10 +10,10 @@ import {
   unique,
   uuid,
 } from 'drizzle-orm/pg-core';
+import { consentWays } from '#shared/patients/record.ts';
+import { patientStates } from '#shared/patients/states.ts';
 import { clinicKey, clinicRow, instant } from './columns.ts';
 import { people } from './people.ts';
-
-export const patientStates = ['planned', 'active', 'paused', 'discharged', 'ended'] as const;
 
 /** A patient's record: who they are and the safety facts that stand at the head of every case. */
 export const patients = pgTable(
@@ -36,6 +36,10 @@ export const patients = pgTable(
     allergies: text(),
     mainMedicines: text(),
     equipmentAtHome: text(),
+    /** That the patient agreed to be looked after this way: when, how it was given, and who recorded it. */
+    consentOn: date(),
+    consentHow: text({ enum: consentWays }),
+    consentBy: uuid(),
     createdAt: instant().notNull(),
   },
   (table) => [
@@ -98,5 +102,51 @@ export const careTeamMembers = pgTable(
     }),
     foreignKey({ columns: [table.clinicId, table.personId], foreignColumns: [people.clinicId, people.id] }),
     index().on(table.clinicId, table.personId),
+  ],
+);
+
+/** Every change of a patient's state, with its reason; the newest one says since when and until when. */
+export const patientStateChanges = pgTable(
+  'patient_state_changes',
+  {
+    ...clinicRow(),
+    patientId: uuid().notNull(),
+    fromState: text({ enum: patientStates }).notNull(),
+    toState: text({ enum: patientStates }).notNull(),
+    reason: text().notNull(),
+    /** For a pause: the day on which the patient is expected back. */
+    backOn: date(),
+    byPersonId: uuid().notNull(),
+    at: instant().notNull(),
+  },
+  (table) => [
+    clinicKey(table),
+    foreignKey({
+      columns: [table.clinicId, table.patientId],
+      foreignColumns: [patients.clinicId, patients.id],
+    }),
+    foreignKey({ columns: [table.clinicId, table.byPersonId], foreignColumns: [people.clinicId, people.id] }),
+    index().on(table.clinicId, table.patientId, table.at),
+  ],
+);
+
+/** Why a clinician from outside the care team opened a chart. The patient reads it. */
+export const chartOpenings = pgTable(
+  'chart_openings',
+  {
+    ...clinicRow(),
+    patientId: uuid().notNull(),
+    personId: uuid().notNull(),
+    reason: text().notNull(),
+    at: instant().notNull(),
+  },
+  (table) => [
+    clinicKey(table),
+    foreignKey({
+      columns: [table.clinicId, table.patientId],
+      foreignColumns: [patients.clinicId, patients.id],
+    }),
+    foreignKey({ columns: [table.clinicId, table.personId], foreignColumns: [people.clinicId, people.id] }),
+    index().on(table.clinicId, table.patientId, table.personId, table.at),
   ],
 );

@@ -11,7 +11,21 @@ export const people = pgTable(
     /** The professional title shown behind a clinician's name, as in "PT". */
     credential: text(),
     email: text().notNull(),
+    /** E.164, as in +15185550123; what pages ring. Null where none is known. */
+    phone: text(),
+    /** Where this person's quiet hours and reminders are counted; null for the clinic's own. */
+    timeZone: text(),
+    /** Quiet hours as 21:00 and 07:00 in that zone; both null for none. Pages pass them. */
+    quietFrom: text(),
+    quietUntil: text(),
+    /** When a patient wants to be reminded of the check-in, as 10:00. */
+    remindAt: text(),
     active: boolean().notNull().default(true),
+    deactivatedAt: instant(),
+    /** Null until the first sign-in: invited, and not come yet. */
+    firstSignedInAt: instant(),
+    /** Mail to this address came back; null again once the address is changed or a mail arrives. */
+    emailBouncedAt: instant(),
     createdAt: instant().notNull(),
   },
   (table) => [clinicKey(table)],

@@ -16,21 +16,31 @@ export const hashPassword = (password: string): Promise<string> => hash(normalis
 const unknownAccountHash = hashPassword(crypto.randomUUID());
 
 let running = 0;
-const waiting: (() => void)[] = [];
+const waiting: { from: string; go: () => void }[] = [];
 const atOnce = 2;
 /** A longer line than this would make everybody wait for whoever made it. */
 const longestLine = 50;
+/** So much of the line one visitor's address may take: nobody shuts the door for all others. */
+const longestOfOne = 15;
 
-/** Exactly one verification, whether or not the account exists; two at a time at most, the rest in line. */
-export const verifyPassword = async (known: string | null, password: string): Promise<boolean> => {
-  if (waiting.length >= longestLine) throw new Problem('unavailable');
-  if (running >= atOnce) await new Promise<void>((resolve) => waiting.push(resolve));
+/**
+ * Exactly one verification, whether or not the account exists; two at a time at most, the rest in line. `from` is
+ * the address that asks.
+ */
+export const verifyPassword = async (
+  known: string | null,
+  password: string,
+  from = 'here',
+): Promise<boolean> => {
+  const own = waiting.filter((one) => one.from === from).length;
+  if (waiting.length >= longestLine || own >= longestOfOne) throw new Problem('unavailable');
+  if (running >= atOnce) await new Promise<void>((go) => waiting.push({ from, go }));
   running += 1;
   try {
     const matches = await verify(known ?? (await unknownAccountHash), normalised(password));
     return matches && known !== null;
   } finally {
     running -= 1;
-    waiting.shift()?.();
+    waiting.shift()?.go();
   }
 };

@@ -1,10 +1,10 @@
 import { createHash } from 'node:crypto';
 import type pg from 'pg';
 
+type Limits = { freeFailures: number; firstWaitSeconds: number; longestWaitSeconds: number };
+
 /** So many failures are free; the last of them brings 30 s, each further one twice as much, up to an hour. */
-const freeFailures = 5;
-const firstWaitSeconds = 30;
-const longestWaitSeconds = 3600;
+const signInLimits: Limits = { freeFailures: 5, firstWaitSeconds: 30, longestWaitSeconds: 3600 };
 /** A day without a failure forgets the earlier ones. */
 const forgetAfter = '24 hours';
 
@@ -19,6 +19,7 @@ export const admitTry = async (
   gate: pg.Pool,
   email: string,
   now: Date,
+  { freeFailures, firstWaitSeconds, longestWaitSeconds }: Limits = signInLimits,
 ): Promise<{ admitted: true } | { admitted: false; retryAfterSeconds: number }> => {
   const key = keyOf(email);
   const { rowCount } = await gate.query(

@@ -26,7 +26,10 @@ export const writeAudit = async (tx: Tx, actor: Inside, fact: AuditFact, now: Da
   await tx.insert(auditEntries).values(entryFor(actor, fact, now));
 };
 
-/** The opening of a chart. The same person opening the same one within five minutes makes no second entry. */
+/**
+ * The opening of a chart, or of a list under its clinic's id: screens fetch it again at each return to them. The
+ * same person opening the same within five minutes makes no second entry; what differs in detail is not the same.
+ */
 export const auditOpening = async (
   tx: Tx,
   actor: Inside,
@@ -35,7 +38,8 @@ export const auditOpening = async (
 ): Promise<void> => {
   const window = Math.floor(now.getTime() / joinWindowMs);
   const who = actor.kind === 'person' ? actor.personId : actor.kind;
-  const joinKey = `${fact.action}:${who}:${fact.subjectId}:${window}`;
+  const detail = Object.values(fact.detail ?? {}).map((value) => `:${value}`);
+  const joinKey = `${fact.action}:${who}:${fact.subjectId}:${window}${detail.join('')}`;
   await tx
     .insert(auditEntries)
     .values({ ...entryFor(actor, fact, now), joinKey })

@@ -1,10 +1,10 @@
 import type { CheckInContext } from '#shared/check-ins/contract.ts';
 import { usualOf } from '#shared/check-ins/usual.ts';
 import { localDateIn } from '#shared/plans/calendar.ts';
-import { Problem } from '#shared/problems/problems.ts';
 import type { PersonActor } from '../../db/actor.ts';
 import type { Tx } from '../../db/with-tx.ts';
 import { auditOpening } from '../audit/service.ts';
+import { checkInRecord } from '../caregivers/limits.ts';
 import { chartOf, standingOf, type Chart } from '../plans/queries.ts';
 import { historyBefore } from './queries.ts';
 
@@ -25,17 +25,12 @@ export const ruleContext = (chart: Chart, now: Date, date: string) => {
 
 /** The check-in's context for the patient's own phone. */
 export const contextFor = async (tx: Tx, actor: PersonActor, now: Date): Promise<CheckInContext> => {
-  if (!actor.patientId) throw new Problem('forbidden');
-  const chart = await chartOf(tx, actor.clinicId, actor.patientId);
+  const patientId = await checkInRecord(tx, actor);
+  const chart = await chartOf(tx, actor.clinicId, patientId);
   const date = localDateIn(chart.patient.timeZone, now);
-  const history = await historyBefore(tx, actor.clinicId, actor.patientId, now);
+  const history = await historyBefore(tx, actor.clinicId, patientId, now);
   const { operationCard, ...facts } = ruleContext(chart, now, date);
-  await auditOpening(
-    tx,
-    actor,
-    { action: 'check-in.context-read', subjectId: actor.patientId, patientId: actor.patientId },
-    now,
-  );
+  await auditOpening(tx, actor, { action: 'check-in.context-read', subjectId: patientId, patientId }, now);
   return {
     ...facts,
     date,

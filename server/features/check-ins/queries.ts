@@ -28,8 +28,7 @@ export const ownCheckIn = async (
   return rows[0] ?? null;
 };
 
-/** The one door to an alert: its author, by the id that the author's device gave it. */
-export const alertOf = async (tx: Tx, actor: PersonActor, clientId: string): Promise<AlertRow> => {
+export const ownAlert = async (tx: Tx, actor: PersonActor, clientId: string): Promise<AlertRow | null> => {
   const rows = await tx
     .select()
     .from(alerts)
@@ -40,8 +39,13 @@ export const alertOf = async (tx: Tx, actor: PersonActor, clientId: string): Pro
         eq(alerts.clientId, clientId),
       ),
     );
-  const alert = rows[0];
-  if (!alert) throw new Problem('not-found');
+  return rows[0] ?? null;
+};
+
+/** The one door to an alert: its author while acting for its patient, by the id that the author's device gave it. */
+export const alertOf = async (tx: Tx, actor: PersonActor, clientId: string): Promise<AlertRow> => {
+  const alert = await ownAlert(tx, actor, clientId);
+  if (alert?.patientId !== actor.patientId) throw new Problem('not-found');
   return alert;
 };
 

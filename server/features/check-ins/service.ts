@@ -10,8 +10,9 @@ import type { Tx } from '../../db/with-tx.ts';
 import { enqueue } from '../../jobs/enqueue.ts';
 import { announce } from '../../realtime/announce.ts';
 import { writeAudit } from '../audit/service.ts';
+import { checkInRecord } from '../caregivers/limits.ts';
 import { firstSeenOf, noteMistake } from '../triage/service.ts';
-import { alertOf, ownCheckIn, type AlertRow, type CheckInRow } from './queries.ts';
+import { alertOf, ownAlert, ownCheckIn, type AlertRow, type CheckInRow } from './queries.ts';
 
 const clockToleranceMs = 5 * 60_000;
 const dayMs = 24 * 60 * 60_000;
@@ -65,11 +66,6 @@ const datedAnswers = async (
   };
 };
 
-const ownPatientId = (actor: PersonActor): string => {
-  if (!actor.patientId) throw new Problem('forbidden', 'Only a patient checks in here.');
-  return actor.patientId;
-};
-
 const receiptOf = (row: CheckInRow): CheckInReceipt => ({
   id: row.clientId,
   receivedAt: row.receivedAt.toISOString(),
@@ -84,7 +80,7 @@ export const submitCheckIn = async (
   input: PostCheckIn,
   now: Date,
 ): Promise<CheckInReceipt> => {
-  const patientId = ownPatientId(actor);
+  const patientId = await checkInRecord(tx, actor);
   const rows = await tx
     .insert(checkIns)
     .values({
@@ -104,9 +100,11 @@ export const submitCheckIn = async (
   if (!written) {
     const earlier = await ownCheckIn(tx, actor, input.id);
     if (!earlier) throw new Problem('state-conflict');
-    if (earlier.kind !== input.kind || !isDeepStrictEqual(earlier.answers, input.answers)) {
-      throw new Problem('id-conflict');
-    }
+    const isSame =
+      earlier.patientId === patientId &&
+      earlier.kind === input.kind &&
+      isDeepStrictEqual(earlier.answers, input.answers);
+    if (!isSame) throw new Problem('id-conflict');
     return receiptOf(earlier);
   }
   await enqueue(
@@ -116,7 +114,7 @@ export const submitCheckIn = async (
     { key: written.id },
   );
   await writeAudit(tx, actor, { action: 'check-in.sent', subjectId: written.id, patientId }, now);
-  await announce(tx, { person: actor.personId }, { topic: 'today' });
+  await announce(tx, { patient: patientId }, { topic: 'today' });
   return receiptOf(written);
 };
 
@@ -134,7 +132,7 @@ export const submitAlert = async (
   input: PostAlert,
   now: Date,
 ): Promise<AlertReceipt> => {
-  const patientId = ownPatientId(actor);
+  const patientId = await checkInRecord(tx, actor);
   const rows = await tx
     .insert(alerts)
     .values({
@@ -152,10 +150,13 @@ export const submitAlert = async (
     .returning();
   const written = rows[0];
   if (!written) {
-    const earlier = await alertOf(tx, actor, input.id);
-    if (earlier.checkInClientId !== input.checkInId || !isDeepStrictEqual(earlier.answers, input.answers)) {
-      throw new Problem('id-conflict');
-    }
+    const earlier = await ownAlert(tx, actor, input.id);
+    if (!earlier) throw new Problem('state-conflict');
+    const isSame =
+      earlier.patientId === patientId &&
+      earlier.checkInClientId === input.checkInId &&
+      isDeepStrictEqual(earlier.answers, input.answers);
+    if (!isSame) throw new Problem('id-conflict');
     return alertReceiptOf(tx, earlier);
   }
   await enqueue(tx, 'evaluate-alert', { clinicId: actor.clinicId, alertId: written.id }, { key: written.id });
@@ -173,6 +174,7 @@ export const submitMistake = async (
   input: { alertId: string; id: string; answeredAt: string },
   now: Date,
 ): Promise<{ id: string; receivedAt: string }> => {
+  await checkInRecord(tx, actor);
   const alert = await alertOf(tx, actor, input.alertId);
   const author = { clinicId: actor.clinicId, authorId: actor.personId, clientId: input.id };
   const rows = await tx

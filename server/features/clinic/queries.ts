@@ -1,9 +1,8 @@
-import { and, eq, lt, or, sql } from 'drizzle-orm';
+import { and, eq, sql } from 'drizzle-orm';
 import type { ClinicCard } from '#shared/clinic/contract.ts';
 import { isOpenAt, nextOpening } from '#shared/clinic/hours.ts';
 import { alerts, checkIns } from '../../db/schema/check-ins.ts';
 import { clinics } from '../../db/schema/clinics.ts';
-import { notifications } from '../../db/schema/notifications.ts';
 import type { Tx } from '../../db/with-tx.ts';
 
 export const clinicOf = async (tx: Tx, clinicId: string) => {
@@ -39,16 +38,3 @@ export const countUnevaluated = async (tx: Tx, clinicId: string, before: Date): 
     );
   return (await waiting(checkIns)) + (await waiting(alerts));
 };
-
-/** Mails of the clinic that failed for good, or that were written before an instant and still wait. */
-export const countUnsent = (tx: Tx, clinicId: string, before: Date): Promise<number> =>
-  tx.$count(
-    notifications,
-    and(
-      eq(notifications.clinicId, clinicId),
-      or(
-        eq(notifications.state, 'failed'),
-        and(eq(notifications.state, 'pending'), lt(notifications.createdAt, before)),
-      ),
-    ),
-  );

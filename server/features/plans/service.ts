@@ -5,7 +5,6 @@ import { daysBetween, localDateIn } from '#shared/plans/calendar.ts';
 import type { PlanExercise } from '#shared/plans/plan.ts';
 import type { Standing } from '#shared/plans/standing.ts';
 import { trellisFrom } from '#shared/plans/trellis.ts';
-import { Problem } from '#shared/problems/problems.ts';
 import { pausesExercises } from '#shared/red-flags/evaluate.ts';
 import { compareUrgency, type Urgency } from '#shared/red-flags/findings.ts';
 import type { PersonActor } from '../../db/actor.ts';
@@ -13,14 +12,10 @@ import { flagEvents, flags } from '../../db/schema/flags.ts';
 import { people } from '../../db/schema/people.ts';
 import type { Tx } from '../../db/with-tx.ts';
 import { auditOpening } from '../audit/service.ts';
+import { actedRecord } from '../caregivers/limits.ts';
 import { checkInDatesOf } from '../check-ins/queries.ts';
 import { countUnseenMessages } from '../threads/queries.ts';
 import { chartOf, leadTherapistOf, openFindingsOf, standingOf } from './queries.ts';
-
-const ownPatientId = (actor: PersonActor): string => {
-  if (!actor.patientId) throw new Problem('forbidden');
-  return actor.patientId;
-};
 
 const holdOffLines = ({ precautions }: Standing): Today['holdOff'] =>
   precautions.map(({ code, icon, usualWeek, usualDate, due }) => ({ code, icon, usualWeek, usualDate, due }));
@@ -85,9 +80,9 @@ const openFlagOf = async (tx: Tx, clinicId: string, patientId: string): Promise<
   return foremost ?? null;
 };
 
-/** The patient's own Today. */
+/** Today, on the patient's own screen and on those of their caregivers. */
 export const todayFor = async (tx: Tx, actor: PersonActor, now: Date): Promise<Today> => {
-  const patientId = ownPatientId(actor);
+  const patientId = actedRecord(actor);
   const chart = await chartOf(tx, actor.clinicId, patientId);
   const date = localDateIn(chart.patient.timeZone, now);
   const standing = standingOf(chart, now, date);
@@ -129,7 +124,7 @@ export const todayFor = async (tx: Tx, actor: PersonActor, now: Date): Promise<T
 
 /** The whole recovery plan by phase. */
 export const myPlanFor = async (tx: Tx, actor: PersonActor, now: Date): Promise<MyPlan> => {
-  const patientId = ownPatientId(actor);
+  const patientId = actedRecord(actor);
   const chart = await chartOf(tx, actor.clinicId, patientId);
   const standing = standingOf(chart, now);
   await auditOpening(tx, actor, { action: 'plan.read', subjectId: patientId, patientId }, now);

@@ -9,15 +9,8 @@ import { notify } from '../../notifications/service.ts';
 import { announce } from '../../realtime/announce.ts';
 import { writeAudit, type AuditFact } from '../audit/service.ts';
 import { clinicOf } from '../clinic/queries.ts';
-import { peopleToTell } from '../triage/people-to-tell.ts';
-import {
-  lockThread,
-  messageByClientId,
-  participantsOf,
-  sideIn,
-  watchersOf,
-  type ThreadRow,
-} from './queries.ts';
+import { answeringPeople, holdPatient, refuseUnwatched, watchersOf } from './people.ts';
+import { lockThread, messageByClientId, sideIn, type ThreadRow } from './queries.ts';
 import { toMessage } from './view.ts';
 
 /** Marks how far someone has seen; never backwards. */
@@ -61,9 +54,14 @@ const takePart = async (tx: Tx, thread: ThreadRow, actor: PersonActor, upTo: num
     });
 };
 
-export const announceThread = async (tx: Tx, thread: ThreadRow, sequence: number) => {
-  const watchers = await watchersOf(tx, thread);
-  for (const { personId } of watchers) {
+export const announceThread = async (
+  tx: Tx,
+  thread: ThreadRow,
+  patient: Parameters<typeof watchersOf>[2],
+  sequence: number,
+) => {
+  const watchers = await watchersOf(tx, thread, patient);
+  for (const personId of watchers.all) {
     await announce(tx, { person: personId }, { topic: 'thread', threadId: thread.id, sequence });
   }
   return watchers;
@@ -117,7 +115,7 @@ const noteOutOfHours = async (tx: Tx, thread: ThreadRow, sequence: number, now: 
 export const appendMessage = async (
   tx: Tx,
   actor: PersonActor,
-  visible: Pick<ThreadRow, 'clinicId' | 'id'>,
+  visible: Pick<ThreadRow, 'clinicId' | 'id' | 'patientId'>,
   { id: clientId, text }: { id: string; text: string },
   now: Date,
   recordedAs: (messageId: string) => AuditFact = (subjectId) => ({
@@ -125,7 +123,8 @@ export const appendMessage = async (
     subjectId,
   }),
 ): Promise<Message> => {
-  // The thread's row first: it hands out the sequence, and a repeat waits here until the first is decided.
+  const patient = await holdPatient(tx, visible, now);
+  // The thread's row next: it hands out the sequence, and a repeat waits here until the first is decided.
   const thread = await lockThread(tx, visible);
   const author = { clinicId: actor.clinicId, authorId: actor.personId, clientId };
   const earlier = await messageByClientId(tx, author);
@@ -133,8 +132,9 @@ export const appendMessage = async (
     if (earlier.threadId === thread.id && earlier.text === text) return toMessage(earlier);
     throw new Problem('id-conflict');
   }
-  const sequence = thread.lastSequence + 1;
   const side = sideIn(thread, actor);
+  await refuseUnwatched(tx, thread.clinicId, patient, side);
+  const sequence = thread.lastSequence + 1;
   const inserted = await tx
     .insert(messages)
     .values({
@@ -160,38 +160,15 @@ export const appendMessage = async (
   if (!written) throw new Error('A message that was just written is not there.');
 
   await writeAudit(tx, actor, { ...recordedAs(written.id), patientId: thread.patientId }, now);
-  const watchers = await announceThread(tx, thread, lastSequence);
-  const [patientPersonId, teamIds] = await receiversOf(tx, thread, watchers);
+  const watchers = await announceThread(tx, thread, patient, lastSequence);
   const occasion = { kind: 'new-message', occasion: `message:${written.id}` } as const;
   if (side === 'clinic') {
-    await notify(
-      tx,
-      thread.clinicId,
-      [patientPersonId],
-      { ...occasion, path: `/messages/${thread.id}` },
-      now,
-    );
-    await announce(tx, { person: patientPersonId }, { topic: 'today' });
+    const { clinicId, id, patientId } = thread;
+    await notify(tx, clinicId, watchers.patientSide, { ...occasion, path: `/messages/${id}` }, now);
+    await announce(tx, { patient: patientId }, { topic: 'today' });
   } else {
-    await notify(tx, thread.clinicId, teamIds, { ...occasion, path: `/clinic/messages/${thread.id}` }, now);
+    const answering = await answeringPeople(tx, thread, watchers);
+    await notify(tx, thread.clinicId, answering, { ...occasion, path: `/clinic/messages/${thread.id}` }, now);
   }
   return toMessage(written);
-};
-
-const receiversOf = async (
-  tx: Tx,
-  thread: ThreadRow,
-  watchers: { personId: string; isTeam: boolean }[],
-): Promise<[patientPersonId: string, teamIds: string[]]> => {
-  const participants = await participantsOf(tx, thread.clinicId, thread.id);
-  const patient = participants.find(({ side }) => side === 'patient');
-  if (!patient) throw new Error('A thread without its patient.');
-  const team = watchers.filter(({ isTeam, personId }) => isTeam && personId !== patient.personId);
-  // A question must not be nobody's: without a care team it goes to whoever would be told of a flag.
-  const { clinicId, patientId } = thread;
-  const teamIds =
-    team.length > 0
-      ? team.map(({ personId }) => personId)
-      : await peopleToTell(tx, { clinicId, patientId, withOnCall: true });
-  return [patient.personId, teamIds];
 };

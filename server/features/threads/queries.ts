@@ -1,22 +1,29 @@
-import { and, asc, desc, eq, exists, gt, inArray, or, sql, type SQL } from 'drizzle-orm';
+import { and, asc, desc, eq, exists, gt, or, sql, type SQL } from 'drizzle-orm';
 import { coversClinic, isClinician } from '#shared/access/permissions.ts';
 import { Problem } from '#shared/problems/problems.ts';
 import type { PersonActor } from '../../db/actor.ts';
 import { careTeamMembers, operationCards, patients } from '../../db/schema/patients.ts';
-import { people, personRoles } from '../../db/schema/people.ts';
+import { people } from '../../db/schema/people.ts';
 import { messages, threadParticipants, threads } from '../../db/schema/threads.ts';
 import type { Tx } from '../../db/with-tx.ts';
+import { messageRecord } from '../caregivers/limits.ts';
+import { relationshipTo } from '../caregivers/queries.ts';
 
 export type ThreadRow = typeof threads.$inferSelect;
 
-/** On which side of a thread somebody stands: its patient is one, also where they work for the clinic. */
+/**
+ * On which side of a thread somebody stands: its patient on one, also where they work for the clinic, and there
+ * too whoever acts for the patient.
+ */
 export const sideIn = (thread: Pick<ThreadRow, 'patientId'>, actor: PersonActor): 'patient' | 'clinic' =>
-  thread.patientId === actor.patientId ? 'patient' : 'clinic';
+  thread.patientId === messageRecord(actor) ? 'patient' : 'clinic';
 
-const ownThreads = ({ patientId }: PersonActor): SQL =>
-  patientId ? eq(threads.patientId, patientId) : sql`false`;
+const ownThreads = (actor: PersonActor): SQL => {
+  const patientId = messageRecord(actor);
+  return patientId ? eq(threads.patientId, patientId) : sql`false`;
+};
 
-/** The threads an actor may see: a patient their own; a clinician those of their care teams, those they take part in, or all. */
+/** The threads an actor may see: a patient and those who act for them the patient's own; a clinician those of their care teams, those they take part in, or all. */
 const visibleThreads = (tx: Tx, actor: PersonActor): SQL | undefined => {
   const inClinic = eq(threads.clinicId, actor.clinicId);
   if (!isClinician(actor.roles)) return and(inClinic, ownThreads(actor));
@@ -39,6 +46,8 @@ const visibleThreads = (tx: Tx, actor: PersonActor): SQL | undefined => {
         eq(threadParticipants.clinicId, threads.clinicId),
         eq(threadParticipants.threadId, threads.id),
         eq(threadParticipants.personId, actor.personId),
+        // Whoever cared for the patient before stands on the patient's side, and sees nothing by that.
+        eq(threadParticipants.side, 'clinic'),
       ),
     );
   return and(inClinic, or(ownThreads(actor), exists(onCareTeam), exists(takesPart)));
@@ -136,7 +145,7 @@ export const summaryOf = async (tx: Tx, actor: PersonActor, threadId: string): P
   return row;
 };
 
-/** In a patient's own threads. */
+/** In the threads of the record that somebody acts on. */
 export const countUnseenMessages = async (tx: Tx, actor: PersonActor): Promise<number> => {
   const rows = await tx
     .select({ total: sql<number>`coalesce(sum(${unseenBy(actor)}), 0)::int` })
@@ -173,12 +182,18 @@ const messageColumns = {
   authorSide: messages.authorSide,
   text: messages.text,
   sentAt: messages.sentAt,
+  relationship: sql<string | null>`case when ${messages.authorSide} = 'patient' then ${relationshipTo(
+    threads.clinicId,
+    threads.patientId,
+    messages.authorId,
+  )} end`,
 };
 
 const selectMessages = (tx: Tx) =>
   tx
     .select(messageColumns)
     .from(messages)
+    .innerJoin(threads, and(eq(threads.clinicId, messages.clinicId), eq(threads.id, messages.threadId)))
     .leftJoin(people, and(eq(people.clinicId, messages.clinicId), eq(people.id, messages.authorId)));
 
 export type MessageRow = Awaited<ReturnType<typeof selectMessages>>[number];
@@ -205,26 +220,4 @@ export const messageByClientId = async (
     and(eq(messages.clinicId, clinicId), eq(messages.authorId, authorId), eq(messages.clientId, clientId)),
   );
   return rows[0] ?? null;
-};
-
-/** Everybody whose screens show the thread, by person: ids only. */
-export const watchersOf = async (
-  tx: Tx,
-  thread: ThreadRow,
-): Promise<{ personId: string; isTeam: boolean }[]> => {
-  const { rows } = await tx.execute<{ person_id: string; is_team: boolean }>(sql`
-    select person_id, bool_or(is_team) as is_team from (
-      select p.person_id, true as is_team from patients p
-        where p.clinic_id = ${thread.clinicId} and p.id = ${thread.patientId}
-      union all
-      select c.person_id, true from care_team_members c
-        where c.clinic_id = ${thread.clinicId} and c.patient_id = ${thread.patientId}
-      union all
-      select t.person_id, true from thread_participants t
-        where t.clinic_id = ${thread.clinicId} and t.thread_id = ${thread.id}
-      union all
-      select r.person_id, false from ${personRoles} r
-        where r.clinic_id = ${thread.clinicId} and ${inArray(sql`r.role`, ['on-call-clinician', 'clinical-lead'])}
-    ) watcher group by person_id`);
-  return rows.map((row) => ({ personId: row.person_id, isTeam: row.is_team }));
 };

@@ -6,6 +6,7 @@ import { threads } from '../../db/schema/threads.ts';
 import type { Tx } from '../../db/with-tx.ts';
 import { auditOpening, writeAudit } from '../audit/service.ts';
 import { announceThread, appendMessage, seeUpTo } from './append.ts';
+import { holdPatient } from './people.ts';
 import { messagesAfter, participantsOf, summariesVisibleTo, summaryOf, threadVisibleTo } from './queries.ts';
 import { detailOf, toMessage, toSummary } from './view.ts';
 
@@ -63,7 +64,7 @@ export const seeThread = async (
     { action: 'thread.seen', subjectId: thread.id, patientId: thread.patientId, detail: { sequence: upTo } },
     now,
   );
-  await announceThread(tx, thread, thread.lastSequence);
+  await announceThread(tx, thread, await holdPatient(tx, thread, now), thread.lastSequence);
   return { seenSequence: mine.seenSequence, seenAt: (mine.seenAt ?? now).toISOString() };
 };
 
@@ -74,6 +75,8 @@ export const endThread = async (
   now: Date,
 ): Promise<ThreadSummary> => {
   const thread = await threadVisibleTo(tx, actor, threadId);
+  // The patient's row before the thread's, as everywhere.
+  const patient = await holdPatient(tx, thread, now);
   const closed = await tx
     .update(threads)
     .set({ state: 'closed' })
@@ -92,6 +95,6 @@ export const endThread = async (
     { action: 'thread.closed', subjectId: thread.id, patientId: thread.patientId },
     now,
   );
-  await announceThread(tx, thread, thread.lastSequence);
+  await announceThread(tx, thread, patient, thread.lastSequence);
   return toSummary(await summaryOf(tx, actor, threadId), now);
 };

@@ -5,7 +5,9 @@ import type { PersonActor } from '../../db/actor.ts';
 import { threadParticipants, threads } from '../../db/schema/threads.ts';
 import type { Tx } from '../../db/with-tx.ts';
 import type { AuditFact } from '../audit/service.ts';
+import { messageRecord } from '../caregivers/limits.ts';
 import { appendMessage } from './append.ts';
+import { holdPatient } from './people.ts';
 import { messageByClientId, sideIn, type ThreadRow } from './queries.ts';
 import { detailOf } from './view.ts';
 
@@ -44,20 +46,23 @@ const insertThread = async (
   return made;
 };
 
-/** A patient opens a thread with its first message. A repeat with the same ids and words is the same thread. */
+/** A patient, or a caregiver who may, opens a thread with its first message. A repeat with the same ids and words is the same thread. */
 export const startThread = async (
   tx: Tx,
   actor: PersonActor,
   input: { id: string; subject: string; message: { id: string; text: string } },
   now: Date,
 ): Promise<ThreadDetail> => {
-  if (!actor.patientId) throw new Problem('forbidden', 'Only a patient starts a thread here.');
+  const patientId = messageRecord(actor);
+  if (!patientId)
+    throw new Problem('forbidden', 'Only a patient, or who may write for one, starts a thread here.');
+  const patient = await holdPatient(tx, { clinicId: actor.clinicId, patientId }, now);
   const made = await insertThread(
     tx,
     actor,
     {
-      patientId: actor.patientId,
-      patientPersonId: actor.personId,
+      patientId,
+      patientPersonId: patient.personId,
       clientId: input.id,
       subject: input.subject,
       flagId: null,
@@ -65,7 +70,7 @@ export const startThread = async (
     now,
   );
   const thread = made ?? (await ownThreadByClientId(tx, actor, input.id));
-  if (thread.subject !== input.subject) throw new Problem('id-conflict');
+  if (thread.subject !== input.subject || thread.patientId !== patientId) throw new Problem('id-conflict');
   if (!made) {
     const author = { clinicId: actor.clinicId, authorId: actor.personId, clientId: input.message.id };
     const first = await messageByClientId(tx, author);

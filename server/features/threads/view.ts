@@ -4,10 +4,20 @@ import type { PersonActor } from '../../db/actor.ts';
 import type { Tx } from '../../db/with-tx.ts';
 import { participantsOf, summaryOf, type MessageRow, type SummaryRow } from './queries.ts';
 
-export const toMessage = ({ authorId, authorName, authorSide, sentAt, ...row }: MessageRow): Message => ({
-  ...row,
-  author:
-    authorId && authorName && authorSide ? { personId: authorId, name: authorName, side: authorSide } : null,
+const authorOf = ({ authorId, authorName, authorSide, relationship }: MessageRow): Message['author'] => {
+  if (!authorId || !authorName || !authorSide) return null;
+  const author = { personId: authorId, name: authorName, side: authorSide };
+  return relationship ? { ...author, relationship } : author;
+};
+
+export const toMessage = ({ sentAt, ...row }: MessageRow): Message => ({
+  id: row.id,
+  clientId: row.clientId,
+  threadId: row.threadId,
+  sequence: row.sequence,
+  kind: row.kind,
+  text: row.text,
+  author: authorOf({ sentAt, ...row }),
   sentAt: sentAt.toISOString(),
 });
 

@@ -106,8 +106,10 @@ export const painBetween = async (
       localDate: checkIns.localDate,
       painNow: sql<number | null>`(${checkIns.answers} ->> 'painNow')::int`,
       painWorst: sql<number | null>`(${checkIns.answers} ->> 'painWorst')::int`,
+      byProxy: sql<boolean>`${checkIns.authorId} <> ${patients.personId}`,
     })
     .from(checkIns)
+    .innerJoin(patients, and(eq(patients.clinicId, checkIns.clinicId), eq(patients.id, checkIns.patientId)))
     .where(
       and(
         eq(checkIns.clinicId, clinicId),

@@ -1,5 +1,6 @@
 import { and, asc, eq } from 'drizzle-orm';
 import { compareUrgency, highestUrgency, type Finding, type Urgency } from '#shared/red-flags/findings.ts';
+import type { NotificationKind } from '#shared/notifications/kinds.ts';
 import { covers } from '#shared/red-flags/told.ts';
 import type { SystemActor } from '../../db/actor.ts';
 import { findings as findingRows, flags } from '../../db/schema/flags.ts';
@@ -67,6 +68,13 @@ const keepFindings = async (
     .onConflictDoNothing();
 };
 
+const kinds = {
+  emergency: 'new-emergency',
+  urgent: 'new-urgent',
+  'same-day': 'new-flag',
+  routine: 'new-flag',
+} as const satisfies Record<Urgency, NotificationKind>;
+
 const tellClinicians = async (
   tx: Tx,
   { clinicId, patientId, id }: FlagRecord,
@@ -76,7 +84,7 @@ const tellClinicians = async (
 ): Promise<void> => {
   const withOnCall = isSerious({ urgency });
   const personIds = await peopleToTell(tx, { clinicId, patientId, withOnCall });
-  const kind = urgency === 'emergency' ? 'new-emergency' : 'new-flag';
+  const kind = kinds[urgency];
   const occasion = `flag:${id}:${source.kind}:${source.id}`;
   await notify(tx, clinicId, personIds, { kind, occasion, path: `/round/${id}` }, now);
 };

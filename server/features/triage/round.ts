@@ -6,6 +6,7 @@ import type { FlagCase, FlagRow, MorningRound } from '#shared/triage/contract.ts
 import type { PersonActor } from '../../db/actor.ts';
 import type { Tx } from '../../db/with-tx.ts';
 import { auditOpening, writeAudit } from '../audit/service.ts';
+import { proxyOf } from '../caregivers/queries.ts';
 import { historyBefore } from '../check-ins/queries.ts';
 import { clinicOf } from '../clinic/queries.ts';
 import { chartOf, standingOf } from '../plans/queries.ts';
@@ -46,7 +47,11 @@ const byDay = (rows: readonly PainDay[], last: string): (number | null)[] => {
   return values;
 };
 
-type RowFacts = { found: Finding[]; pain: { localDate: string; painNow: number | null }[]; date: string };
+type RowFacts = {
+  found: Finding[];
+  pain: { localDate: string; painNow: number | null; byProxy: boolean }[];
+  date: string;
+};
 
 const toRow = (row: RoundRow, { found, pain, date }: RowFacts): FlagRow => {
   const { flag } = row;
@@ -73,11 +78,11 @@ const toRow = (row: RoundRow, { found, pain, date }: RowFacts): FlagRow => {
       date,
     ),
     usualPain: usualOf(
-      before.map(({ localDate, painNow }) => ({
+      before.map(({ localDate, painNow, byProxy }) => ({
         answeredAt: `${localDate}T12:00:00Z`,
         painNow,
         painWorst: null,
-        byProxy: false,
+        byProxy,
       })),
     ).painNow,
   };
@@ -138,6 +143,7 @@ export const caseFor = async (tx: Tx, actor: PersonActor, flagId: string, now: D
   const row = await flagRowOf(tx, actor, flagId, now);
   const chart = await chartOf(tx, actor.clinicId, flag.patientId);
   const { answers, answeredAt, localDate } = await answeredOf(tx, flag);
+  const proxy = await proxyOf(tx, flag.clinicId, flag.patientId, flag.sourceAuthorId);
   const standing = standingOf(chart, now);
   const history = await historyBefore(tx, actor.clinicId, flag.patientId, answeredAt);
   const from = addDays(localDate, 1 - daysShown);
@@ -180,6 +186,7 @@ export const caseFor = async (tx: Tx, actor: PersonActor, flagId: string, now: D
       ),
     }),
     answeredAt: answeredAt.toISOString(),
+    ...(proxy ? { answeredBy: proxy } : {}),
     note: answers.note?.trim() || null,
     inForce: standing.precautions.map(({ code, clinicianText, usualDate, due }) => ({
       code,

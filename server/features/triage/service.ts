@@ -4,7 +4,7 @@ import { flagEvents, flags } from '../../db/schema/flags.ts';
 import type { Tx } from '../../db/with-tx.ts';
 import { announce } from '../../realtime/announce.ts';
 import { firstSeenEvent } from './looks.ts';
-import { patientPersonOf, type FlagRecord } from './queries.ts';
+import type { FlagRecord } from './queries.ts';
 
 const sourceIs = (clinicId: string, source: { authorId: string; checkInClientId: string }) =>
   and(
@@ -27,11 +27,10 @@ export const addFlagEvent = async (
   return rows.length > 0;
 };
 
-/** Every open morning round of the clinic, and the patient's own Today. */
+/** Every open morning round of the clinic, and Today of the patient and of those who care for them. */
 export const announceFlag = async (tx: Tx, flag: Pick<FlagRecord, 'clinicId' | 'id' | 'patientId'>) => {
   await announce(tx, { clinicians: flag.clinicId }, { topic: 'flags', flagId: flag.id });
-  const { personId } = await patientPersonOf(tx, flag.clinicId, flag.patientId);
-  await announce(tx, { person: personId }, { topic: 'today' });
+  await announce(tx, { patient: flag.patientId }, { topic: 'today' });
 };
 
 /** Tells the patient's phone that something became of the alerts behind a flag. */

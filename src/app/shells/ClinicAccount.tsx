@@ -1,4 +1,5 @@
-import { ChevronsUpDown, LogOut } from 'lucide-react';
+import { Bell, ChevronsUpDown, KeyRound, LogOut } from 'lucide-react';
+import { useNavigate } from 'react-router-dom';
 import type { Me } from '#shared/accounts/contract.ts';
 import type { Role } from '#shared/access/permissions.ts';
 import { Avatar } from '#src/components/Avatar.tsx';
@@ -18,6 +19,7 @@ const roleWords: Record<Role, string> = {
 /** Who is signed in, in which role, and the way out. */
 export function ClinicAccount({ me }: { me: Me }) {
   const signOut = useSignOut();
+  const navigate = useNavigate();
   const role = me.roles.map((held) => roleWords[held]).join(', ');
   return (
     <div>
@@ -36,7 +38,21 @@ export function ClinicAccount({ me }: { me: Me }) {
             <ChevronsUpDown className="size-4 shrink-0" aria-hidden />
           </button>
         }
-        items={[{ key: 'sign-out', label: 'Sign out', icon: LogOut, onSelect: () => signOut.mutate() }]}
+        items={[
+          {
+            key: 'sign-in',
+            label: 'Sign-in and devices',
+            icon: KeyRound,
+            onSelect: () => void navigate('/clinic/account/sign-in'),
+          },
+          {
+            key: 'notifications',
+            label: 'Notifications',
+            icon: Bell,
+            onSelect: () => void navigate('/clinic/account/notifications'),
+          },
+          { key: 'sign-out', label: 'Sign out', icon: LogOut, onSelect: () => signOut.mutate() },
+        ]}
       />
       <p role="alert" className="font-bold text-clay">
         {signOut.isError

@@ -1,10 +1,12 @@
 import { lazy, Suspense, useRef, useState } from 'react';
+import { loadWords } from '#src/lib/i18n.ts';
 import { AccountMenu } from '../AccountMenu.tsx';
 import { useMe } from '../session.tsx';
 
-const PatientMenuItems = lazy(async () => ({
-  default: (await import('./PatientMenuItems.tsx')).PatientMenuItems,
-}));
+const PatientMenuItems = lazy(async () => {
+  const [module] = await Promise.all([import('./PatientMenuItems.tsx'), loadWords(['account', 'leaving'])]);
+  return { default: module.PatientMenuItems };
+});
 const UnsentDialog = lazy(async () => ({ default: (await import('./UnsentDialog.tsx')).UnsentDialog }));
 
 /**

@@ -1,4 +1,5 @@
 import { ListChecks, MessageSquare, Sprout } from 'lucide-react';
+import { lazy, Suspense } from 'react';
 import { useTranslation } from 'react-i18next';
 import { Link, Outlet } from 'react-router-dom';
 import { BottomBar } from '#src/components/BottomBar.tsx';
@@ -10,28 +11,39 @@ import type { NavigationItem } from '#src/components/navigation.ts';
 import { useResumedAlerts } from '#src/features/check-ins/resume-alerts.ts';
 import { useUnseenMessages } from '#src/features/plans/queries.ts';
 import { telephoneHref } from '#src/lib/format.ts';
+import { loadWords } from '#src/lib/i18n.ts';
+import { useRecord } from '../caring.ts';
 import { useMe } from '../session.tsx';
 import { PatientMenu } from './PatientMenu.tsx';
 import { SideNavigation } from './SideNavigation.tsx';
 
 const mainId = 'main';
 
+/** For the few whom the clinic no longer watches; the others do not wait for it. */
+const NotWatched = lazy(async () => {
+  const [module] = await Promise.all([import('../NotWatched.tsx'), loadWords(['record'])]);
+  return { default: module.NotWatched };
+});
+
 /** Around the patient's places: the bar at the top, the places, and the emergency line at all times. */
 export function PatientShell() {
   const { t } = useTranslation();
   const { clinic } = useMe();
+  const { state, caring } = useRecord();
   const unseen = useUnseenMessages();
   useResumedAlerts();
   const places: NavigationItem[] = [
     { to: '/today', label: t('nav.today'), icon: Sprout },
     { to: '/plan', label: t('nav.plan'), icon: ListChecks },
-    {
+  ];
+  if (caring?.mayMessage !== false) {
+    places.push({
       to: '/messages',
       label: t('nav.messages'),
       icon: MessageSquare,
       badge: { count: unseen, label: t('nav.unseen', { count: unseen }) },
-    },
-  ];
+    });
+  }
   return (
     <div className="base-large flex min-h-dvh flex-col">
       <SkipLink targetId={mainId} label={t('skip')} />
@@ -46,6 +58,11 @@ export function PatientShell() {
       <div className="mx-auto grid w-full max-w-5xl grow grid-cols-1 content-start lg:grid-cols-[13rem_minmax(0,1fr)]">
         <SideNavigation label={t('places')} items={places} />
         <main id={mainId} tabIndex={-1} className="w-full max-w-3xl min-w-0 px-5 pt-3 pb-10">
+          {state === 'discharged' || state === 'ended' ? (
+            <Suspense>
+              <NotWatched />
+            </Suspense>
+          ) : null}
           <Outlet />
         </main>
       </div>

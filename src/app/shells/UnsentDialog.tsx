@@ -6,7 +6,7 @@ type Props = { onStay: () => void };
 
 /** Before a sign-out that would lose a check-in that is not sent. */
 export function UnsentDialog({ onStay }: Props) {
-  const { t } = useTranslation();
+  const { t } = useTranslation('leaving');
   const signOut = useSignOut();
   return (
     <AlertDialog

@@ -18,7 +18,7 @@ import { answerWords, questionWords, usualWords } from './words.ts';
 
 /** One question after the other, the caution over them when one is due, and what happens next at the end. */
 export function CheckInFlow({ start, firstName }: { start: CheckInDraft; firstName: string }) {
-  const { t } = useTranslation(['check-in-screens', 'check-in', 'plan']);
+  const { t } = useTranslation(['check-in-screens', 'check-in', 'plan-details']);
   const checkIn = useCheckIn(start);
   const { draft, screen, me } = checkIn;
   const { answers, context, mode, caution } = draft;

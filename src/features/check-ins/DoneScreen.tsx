@@ -74,7 +74,7 @@ export function DoneScreen({ receipt, findings, firstName, clinic }: Props) {
       </main>
       <BottomDock>
         <EmergencyLine label={t('app:emergency.label')} href={telephoneHref(clinic.emergencyNumber)}>
-          {t('app:emergency.short', { number: clinic.emergencyNumber })}
+          {t('emergency', { number: clinic.emergencyNumber })}
         </EmergencyLine>
       </BottomDock>
     </div>

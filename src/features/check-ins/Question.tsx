@@ -24,7 +24,7 @@ type Props = {
 
 /** The answers of one question, by its kind. Nothing is ever picked beforehand. */
 export function Question({ screen, label, answers, context, side, onAnswer }: Props) {
-  const { t } = useTranslation(['check-in-screens', 'check-in', 'plan']);
+  const { t } = useTranslation(['check-in-screens', 'check-in', 'plan-details']);
   switch (screen.kind) {
     case 'scale':
       return (
@@ -91,7 +91,7 @@ type TicksProps = Pick<Props, 'label' | 'answers' | 'onAnswer'> & {
 };
 
 function Ticks({ screen, label, choices, answers, onAnswer }: TicksProps) {
-  const { t } = useTranslation(['check-in-screens', 'check-in', 'plan']);
+  const { t } = useTranslation(['check-in-screens', 'check-in', 'plan-details']);
   const ticked = tickedIn(screen, answers);
   const alone = (
     <AloneButton

@@ -88,7 +88,7 @@ export function QuestionFrame(props: Props) {
           </div>
         ) : null}
         <EmergencyLine label={tCommon('emergency.label')} href={telephoneHref(emergencyNumber)}>
-          {tCommon('emergency.short', { number: emergencyNumber })}
+          {t('check-in-screens:emergency', { number: emergencyNumber })}
         </EmergencyLine>
       </BottomDock>
     </div>

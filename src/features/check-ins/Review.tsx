@@ -22,7 +22,7 @@ const tellLeftBelow = 200;
 
 /** Everything that was answered, each to be changed, before it is sent. */
 export function Review({ draft, side, onNote, onChange }: Props) {
-  const { t } = useTranslation(['check-in-screens', 'check-in', 'plan']);
+  const { t } = useTranslation(['check-in-screens', 'check-in', 'plan-details']);
   const { answers, context, mode } = draft;
   const screens = screensFor(answers, context, mode).filter(({ kind }) => kind !== 'note');
   const open = unanswered(draft).length;

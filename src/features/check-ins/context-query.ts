@@ -17,10 +17,11 @@ export const useCheckInContext = () => useQuery(contextQuery);
  * Fetches what a check-in needs while nothing else is going on, so that it opens at once, also when the network
  * has gone meanwhile. `loadScreen` brings the screen's own code.
  */
-export function usePreparedCheckIn(loadScreen: () => Promise<void>): void {
+export function usePreparedCheckIn(wanted: boolean, loadScreen: () => Promise<void>): void {
   const queryClient = useQueryClient();
   const load = useRef(loadScreen);
   useEffect(() => {
+    if (!wanted) return undefined;
     const prepare = () => {
       void queryClient.prefetchQuery(contextQuery);
       // A failure needs no word here: the code is asked for again when the check-in is opened.
@@ -28,5 +29,5 @@ export function usePreparedCheckIn(loadScreen: () => Promise<void>): void {
     };
     const timer = setTimeout(prepare, 1_500);
     return () => clearTimeout(timer);
-  }, [queryClient]);
+  }, [wanted, queryClient]);
 }

@@ -17,10 +17,12 @@ export const useAlertReceipt = (alertId: string, received: boolean) =>
     refetchIntervalInBackground: true,
   });
 
-export function usePostCheckIn() {
+/** Sends a check-in about the record that it was begun for (null: one's own), whichever one the tab is on by then. */
+export function usePostCheckIn(recordId: string | null) {
   const queryClient = useQueryClient();
   return useMutation({
-    mutationFn: (body: PostCheckIn) => call<typeof postCheckIn>('post', '/api/check-ins', { body }),
+    mutationFn: (body: PostCheckIn) =>
+      call<typeof postCheckIn>('post', '/api/check-ins', { body }, { record: recordId }),
     onSuccess: async () => {
       await Promise.all([
         queryClient.invalidateQueries({ queryKey: queryPrefixes.today }),

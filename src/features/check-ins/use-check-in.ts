@@ -6,6 +6,7 @@ import type { CheckInReceipt } from '#shared/check-ins/contract.ts';
 import type { Screen } from '#shared/check-ins/screens.ts';
 import { previousScreen } from '#shared/check-ins/walk.ts';
 import { rulesVersion } from '#shared/red-flags/rules/shipped.ts';
+import { useKeeper } from '#src/app/caring.ts';
 import { useMe } from '#src/app/session.tsx';
 import { useBusyWhile } from '#src/lib/busy.ts';
 import { dropFromDevice, keepOnDevice } from '#src/lib/device-store.ts';
@@ -36,14 +37,15 @@ function stepOf(state: unknown): Step | null {
  */
 export function useCheckIn(start: CheckInDraft) {
   const me = useMe();
+  const { recordId } = useKeeper();
   const queryClient = useQueryClient();
   const navigate = useNavigate();
   const location = useLocation();
   const [draft, setDraft] = useState(start);
   const [receipt, setReceipt] = useState<CheckInReceipt | null>(null);
   const [takenBack, setTakenBack] = useState(false);
-  const post = usePostCheckIn();
-  const outbox = alertOutboxOf(me, queryClient);
+  const post = usePostCheckIn(recordId);
+  const outbox = alertOutboxOf(me, recordId, queryClient);
   const alerts = useSyncExternalStore(outbox.subscribe, outbox.entries);
 
   const step = stepOf(location.state);
@@ -58,7 +60,7 @@ export function useCheckIn(start: CheckInDraft) {
   }, [navigate, location.state, at]);
 
   function save(next: CheckInDraft) {
-    keepOnDevice(storeOf(me), keptNames.draft[next.mode], next);
+    keepOnDevice(storeOf(me, recordId), keptNames.draft[next.mode], next);
     setDraft(next);
     setTakenBack(false);
   }
@@ -135,7 +137,7 @@ export function useCheckIn(start: CheckInDraft) {
       },
       {
         onSuccess: (accepted) => {
-          dropFromDevice(me.personId, keptNames.draft[mode]);
+          dropFromDevice(storeOf(me, recordId), keptNames.draft[mode]);
           setReceipt(accepted);
         },
       },

@@ -6,7 +6,7 @@ import { sinceLastCheckIn } from '#shared/check-ins/since.ts';
 import { precautionChoices } from '#shared/check-ins/walk.ts';
 import { formatDate, formatWeekday } from '#src/lib/format.ts';
 
-type T = TFunction<readonly ['check-in-screens', 'check-in', 'plan']>;
+type T = TFunction<readonly ['check-in-screens', 'check-in', 'plan-details']>;
 
 /** "since Friday", "since surgery". */
 function sinceWords(t: T, { lastCheckInDate, date }: CheckInContext): string {

@@ -29,7 +29,7 @@ function waitingWords(unevaluated: number, lastBeatAt: string | null, timeZone: 
 }
 
 /**
- * Stands over every clinic screen while check-ins may be shown late, while mails are not sent, or while this
+ * Stands over every clinic screen while check-ins may be shown late, while notifications do not get through, or while this
  * screen cannot know. A flag that is missing looks like a patient who is well, so silence would be the worst
  * answer.
  */
@@ -56,9 +56,13 @@ export function WorkerBanner({ clinic }: Props) {
       {!error && data !== undefined && data.unsent > 0 ? (
         <Banner
           tone="danger"
-          title={data.unsent === 1 ? '1 mail could not be sent.' : `${data.unsent} mails could not be sent.`}
+          title={
+            data.unsent === 1
+              ? '1 notification did not get through.'
+              : `${data.unsent} notifications did not get through.`
+          }
         >
-          Look at the round itself, not only at your mail.
+          Look at the round itself, not only at your phone and mail.
         </Banner>
       ) : null}
     </div>

@@ -22,7 +22,9 @@ export function DoList({ items, steps = false }: Props) {
         detail: (
           <>
             <span className="block">{dosageWords(t, exercise)}</span>
-            {steps ? <span className="mt-1 block">{t(`exercises.${exercise.code}.steps`)}</span> : null}
+            {steps ? (
+              <span className="mt-1 block">{t(`plan-details:exercises.${exercise.code}.steps`)}</span>
+            ) : null}
           </>
         ),
       }))}

@@ -34,7 +34,8 @@ export function HoldOffList({ items, therapist, reasons = false, atFirst = items
             title: t(`precautions.${code}.title`),
             detail: (
               <>
-                {t(`precautions.${code}.detail`)} {reasons ? <>{t(`precautions.${code}.why`)} </> : null}
+                {t(`precautions.${code}.detail`)}{' '}
+                {reasons ? <>{t(`plan-details:precautions.${code}.why`)} </> : null}
                 <span className={due ? 'font-bold text-ink' : undefined}>
                   {due
                     ? t('until.due', { therapist: decider })

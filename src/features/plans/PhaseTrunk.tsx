@@ -16,7 +16,7 @@ type Props = {
 
 /** The phases as a trunk: those behind, the one that is open, and those that a clinician will open. */
 export function PhaseTrunk({ phases, nowMs, children }: Props) {
-  const { t, i18n } = useTranslation(['my-plan', 'plan']);
+  const { t, i18n } = useTranslation(['my-plan', 'plan', 'plan-details']);
   const date = localDateOf(nowMs);
   return (
     <ol className="grid grid-cols-1">
@@ -45,9 +45,9 @@ export function PhaseTrunk({ phases, nowMs, children }: Props) {
             <span className="text-base font-normal text-ink-soft">{whenWords(t, phase, date)}</span>
           </h2>
           <p className="mt-1 text-ink-soft">
-            {phase.current || phase.openedOn || !i18n.exists(`plan:phases.${phase.code}.opens`)
-              ? t(`plan:phases.${phase.code}.goal`)
-              : t(`plan:phases.${phase.code}.opens`)}
+            {phase.current || phase.openedOn || !i18n.exists(`plan-details:phases.${phase.code}.opens`)
+              ? t(`plan-details:phases.${phase.code}.goal`)
+              : t(`plan-details:phases.${phase.code}.opens`)}
           </p>
           {phase.current ? <div className="mt-2">{children}</div> : null}
         </li>
@@ -56,7 +56,11 @@ export function PhaseTrunk({ phases, nowMs, children }: Props) {
   );
 }
 
-function whenWords(t: TFunction<readonly ['my-plan', 'plan']>, phase: Phase, date: string): string {
+function whenWords(
+  t: TFunction<readonly ['my-plan', 'plan', 'plan-details']>,
+  phase: Phase,
+  date: string,
+): string {
   const { current, openedOn, usualStartWeek, usualEndWeek, usualEndDate } = phase;
   if (current) {
     if (usualEndDate === null) return t('now');

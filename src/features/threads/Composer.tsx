@@ -1,8 +1,8 @@
 import { useEffect, useEffectEvent, useId } from 'react';
 import { useTranslation } from 'react-i18next';
 import type { Message } from '#shared/threads/contract.ts';
+import { useKeeper } from '#src/app/caring.ts';
 import { useControlsSide } from '#src/app/free-hand.ts';
-import { useMe } from '#src/app/session.tsx';
 import { Banner } from '#src/components/Banner.tsx';
 import { Button } from '#src/components/Button.tsx';
 import { TextArea } from '#src/components/TextArea.tsx';
@@ -18,9 +18,8 @@ type Props = { threadId: string; label: string; messages: readonly Message[]; on
 /** Where a message is written. What was typed stays until the thread has it, and a repeat is the same message. */
 export function Composer({ threadId, label, messages, onSent }: Props) {
   const { t } = useTranslation('threads');
-  const { personId } = useMe();
   const controlsSide = useControlsSide();
-  const { draft, write, renewId, clear } = useDraft(personId, `thread/${threadId}`);
+  const { draft, write, renewId, clear } = useDraft(useKeeper(), `thread/${threadId}`);
   const post = usePostMessage(threadId);
   const refusal = useRefusal(post.error);
   const id = useId();

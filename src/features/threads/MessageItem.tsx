@@ -5,13 +5,13 @@ import { classNames } from '#src/components/class-names.ts';
 import { formatTime } from '#src/lib/format.ts';
 import type { SeenMark, Side } from './seen-mark.ts';
 
-type Props = { message: Message; side: Side; seen: SeenMark | null };
+type Props = { message: Message; patientName: string; side: Side; seen: SeenMark | null };
 
 /** Text is shown as it was typed and in its own direction, whatever stands around it. */
 const asTyped = 'wrap-anywhere whitespace-pre-wrap [unicode-bidi:isolate]';
 
 /** One's own side stands to the right. Notes of the system stand in the middle. */
-export function MessageItem({ message, side, seen }: Props) {
+export function MessageItem({ message, patientName, side, seen }: Props) {
   const { t } = useTranslation('threads');
   const { personId, clinic } = useMe();
   const { author, text, sentAt } = message;
@@ -36,8 +36,11 @@ export function MessageItem({ message, side, seen }: Props) {
           {text}
         </p>
         <p className="mt-1.5 text-sm text-ink-soft">
-          <bdi>{author.personId === personId ? t('thread.you') : author.name}</bdi> ·{' '}
-          <time dateTime={sentAt}>{time}</time>
+          <bdi>{author.personId === personId ? t('thread.you') : author.name}</bdi>
+          {author.relationship === undefined
+            ? null
+            : t(`thread.caregiver.${side}`, { relationship: author.relationship, name: patientName })}{' '}
+          · <time dateTime={sentAt}>{time}</time>
           {seen?.sequence === message.sequence ? (
             <>
               {' · '}

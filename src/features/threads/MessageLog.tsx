@@ -112,7 +112,13 @@ export function MessageLog({ thread, messages, side, frame, followOwn }: Props) 
               {entry.localDate === today ? t('thread.today') : formatDayAndDate(entry.localDate)}
             </li>
           ) : (
-            <MessageItem key={entry.key} message={entry.message} side={side} seen={seen} />
+            <MessageItem
+              key={entry.key}
+              message={entry.message}
+              patientName={thread.patient.name}
+              side={side}
+              seen={seen}
+            />
           ),
         )}
       </ol>

@@ -6,6 +6,7 @@ import { useTranslation } from 'react-i18next';
 import { useNavigate } from 'react-router-dom';
 import type { z } from 'zod';
 import { postThreadBody } from '#shared/threads/contract.ts';
+import { useKeeper } from '#src/app/caring.ts';
 import { useControlsSide } from '#src/app/free-hand.ts';
 import { useMe } from '#src/app/session.tsx';
 import { Banner } from '#src/components/Banner.tsx';
@@ -32,11 +33,12 @@ const wrongs: Record<string, 'missing' | 'long' | 'characters'> = {
 /** A patient's new thread with its first message. Both are kept over a reload until they are sent. */
 export function NewThreadForm() {
   const { t } = useTranslation('threads');
-  const { personId, clinic } = useMe();
+  const { clinic } = useMe();
+  const keeper = useKeeper();
   const controlsSide = useControlsSide();
   const navigate = useNavigate();
-  const subject = useDraft(personId, 'new-thread/subject');
-  const text = useDraft(personId, 'new-thread/text');
+  const subject = useDraft(keeper, 'new-thread/subject');
+  const text = useDraft(keeper, 'new-thread/text');
   const post = usePostThread();
   const refusal = useRefusal(post.error);
   const [defaults] = useState<Body>({

@@ -16,17 +16,23 @@ import { useRefusal } from './refusal.ts';
 import type { Side } from './seen-mark.ts';
 import { ThreadHead } from './ThreadHead.tsx';
 
-type Props = { threadId: string; side: Side };
+type Props = {
+  threadId: string;
+  side: Side;
+  /** Why nothing can be written here, where that is so; it stands in the place of the composer. */
+  readOnly?: string | undefined;
+};
 
 /** One thread, live: its messages and where one writes. On a patient's page it brings the first heading. */
-export function ThreadView({ threadId, side }: Props) {
+export function ThreadView({ threadId, side, readOnly }: Props) {
   const { t } = useTranslation(['threads', 'app']);
   const thread = useThread(threadId);
   const messages = useMessages(threadId);
   const error = thread.error ?? messages.error;
   const refusal = useRefusal(error);
   if (thread.data && messages.data) {
-    return <OpenThread key={threadId} thread={thread.data} messages={messages.data} side={side} />;
+    const open = { thread: thread.data, messages: messages.data, side, readOnly };
+    return <OpenThread key={threadId} {...open} />;
   }
   if (!error) return <LoadingState label={t('thread.loading')} lines={8} />;
   if (error instanceof ApiProblem && error.code === 'not-found') {
@@ -53,9 +59,9 @@ export function ThreadView({ threadId, side }: Props) {
   );
 }
 
-type OpenThreadProps = { thread: ThreadDetail; messages: readonly Message[]; side: Side };
+type OpenThreadProps = Omit<Props, 'threadId'> & { thread: ThreadDetail; messages: readonly Message[] };
 
-function OpenThread({ thread, messages, side }: OpenThreadProps) {
+function OpenThread({ thread, messages, side, readOnly }: OpenThreadProps) {
   const { t } = useTranslation('threads');
   const { clinic } = useMe();
   const heading = useRef<HTMLHeadingElement>(null);
@@ -75,14 +81,22 @@ function OpenThread({ thread, messages, side }: OpenThreadProps) {
             'z-10 -mb-4 bg-sheet pb-4 @4xl/clinic:-mb-5 @4xl/clinic:pb-5 [@media(min-height:34em)]:sticky [@media(min-height:34em)]:bottom-0 @4xl/clinic:[@media(min-height:34em)]:-bottom-5',
         )}
       >
-        {thread.state === 'closed' ? <p className="text-ink-soft">{t(`closed.${side}`)}</p> : null}
-        {isClinic ? null : <OutOfHours clinic={clinic} />}
-        <Composer
-          threadId={thread.id}
-          label={t(`composer.label.${side}`, { name: thread.patient.name })}
-          messages={messages}
-          onSent={() => setSentHere((count) => count + 1)}
-        />
+        {thread.state === 'closed' && readOnly === undefined ? (
+          <p className="text-ink-soft">{t(`closed.${side}`)}</p>
+        ) : null}
+        {readOnly === undefined ? (
+          <>
+            {isClinic ? null : <OutOfHours clinic={clinic} />}
+            <Composer
+              threadId={thread.id}
+              label={t(`composer.label.${side}`, { name: thread.patient.name })}
+              messages={messages}
+              onSent={() => setSentHere((count) => count + 1)}
+            />
+          </>
+        ) : (
+          <p className="font-bold">{readOnly}</p>
+        )}
       </div>
     </article>
   );

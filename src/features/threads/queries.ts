@@ -21,11 +21,13 @@ const threadKeys = {
   messages: (threadId: string) => [...queryPrefixes.threads, 'messages', threadId],
 } as const;
 
-export const useThreads = () =>
+/** The clinic's shell counts the threads only for those who may read them. */
+export const useThreads = ({ enabled }: { enabled: boolean } = { enabled: true }) =>
   useQuery({
     queryKey: threadKeys.list,
     queryFn: async ({ signal }) =>
       (await call<typeof listThreads>('get', '/api/threads', {}, { signal })).threads,
+    enabled,
   });
 
 export const useThread = (threadId: string) =>

@@ -60,7 +60,9 @@ export function BesideUsual({ flag, timeZone, nowMs }: Props) {
       )}
       {flag.note === null ? null : (
         <figure className="mt-4 border-l-3 border-wire pl-4">
-          <figcaption className="text-sm font-bold">{firstNameOf(flag.patient.name)} wrote</figcaption>
+          <figcaption className="text-sm font-bold">
+            {firstNameOf(flag.answeredBy?.name ?? flag.patient.name)} wrote
+          </figcaption>
           <blockquote dir="auto" className="whitespace-pre-wrap [unicode-bidi:isolate]">
             {flag.note}
           </blockquote>

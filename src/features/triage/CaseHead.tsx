@@ -35,6 +35,11 @@ export function CaseHead({ flag, headingRef, claim, release }: Props) {
           <p className="mt-1 text-ink-soft first-letter:uppercase">
             {longOperation(patient)}&nbsp;· day {patient.day}, {person.phase} phase&nbsp;· {person.surgeon}
           </p>
+          {flag.answeredBy ? (
+            <p className="mt-1 font-bold">
+              Answered by {flag.answeredBy.name}, {flag.answeredBy.relationship}
+            </p>
+          ) : null}
         </div>
         <div className="flex flex-wrap gap-3">
           <LinkButton href={telephoneHref(person.phone)} variant="outline" icon={Phone}>

@@ -1,6 +1,7 @@
 import { lazy, Suspense, useEffect, useRef, useState } from 'react';
 import type { FlagCase } from '#shared/triage/contract.ts';
 import { afterMove } from '#shared/triage/lifecycle.ts';
+import { useKeeper } from '#src/app/caring.ts';
 import { useMe } from '#src/app/session.tsx';
 import { ErrorState } from '#src/components/ErrorState.tsx';
 import { LinkButton } from '#src/components/LinkButton.tsx';
@@ -58,7 +59,7 @@ function Case({ flag, nowMs }: { flag: FlagCase; nowMs: number }) {
   const [openForm, setOpenForm] = useState<'reply' | 'close' | null>(null);
   const claim = useClaimFlag(flag.id);
   const release = useReleaseFlag(flag.id);
-  const reply = useDraft(me.personId, `flag/${flag.id}`);
+  const reply = useDraft(useKeeper(), `flag/${flag.id}`);
   const heading = useRef<HTMLHeadingElement>(null);
   useEffect(() => heading.current?.focus({ preventScroll: true }), []);
   useSeeOnce(flag, flag.state !== 'closed');

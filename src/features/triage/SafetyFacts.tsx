@@ -28,8 +28,13 @@ function thinnerWords(bloodThinner: string | null): string {
 
 const isNone = (fact: string): boolean => /^(none|no|nil)\b/iu.test(fact.trim());
 
+type Person = Pick<
+  FlagCase['person'],
+  'bloodThinner' | 'allergies' | 'emergencyContact' | 'chartNumber' | 'language'
+>;
+
 /** What must not be overlooked before anything is advised; what endangers is bold. */
-export function SafetyFacts({ person }: { person: FlagCase['person'] }) {
+export function SafetyFacts({ person }: { person: Person }) {
   const { bloodThinner, allergies } = person;
   // Bold only supports the words: a fact is always shown as it was recorded.
   const thinnerEndangers = bloodThinner === null || !isNone(bloodThinner);

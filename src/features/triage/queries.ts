@@ -18,10 +18,12 @@ const flagKeys = {
   case: (flagId: string) => [...queryPrefixes.flags, 'case', flagId],
 } as const;
 
-export const useMorningRound = () =>
+/** The shell counts the round only for those who may see it. */
+export const useMorningRound = ({ enabled }: { enabled: boolean } = { enabled: true }) =>
   useQuery({
     queryKey: flagKeys.round,
     queryFn: ({ signal }) => call<typeof listFlags>('get', '/api/flags', {}, { signal }),
+    enabled,
   });
 
 export const useFlagCase = (flagId: string) =>

@@ -9,7 +9,13 @@ import { noorSignedIn } from '../clinic/screen.tsx';
 const operated = (arm: 'left' | 'right', personId = 'ines'): Me => ({
   ...noorSignedIn,
   personId,
-  patient: { id: 'p', arm, controlsTowards: arm === 'left' ? 'right' : 'left' },
+  patient: {
+    id: 'p',
+    arm,
+    controlsTowards: arm === 'left' ? 'right' : 'left',
+    state: 'active',
+    stateSince: null,
+  },
 });
 
 const sideFor = (me: Me) =>

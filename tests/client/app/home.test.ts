@@ -6,6 +6,10 @@ describe('the first screen of a person', () => {
     expect(homeOf(['patient'])).toBe('/today');
     expect(homeOf(['therapist', 'clinical-lead'])).toBe('/round');
     expect(homeOf(['on-call-clinician'])).toBe('/round');
+    expect(homeOf(['caregiver'])).toBe('/today');
+    expect(homeOf(['therapist', 'caregiver'])).toBe('/round');
+    expect(homeOf(['administrator'])).toBe('/clinic/people');
+    expect(homeOf(['administrator', 'clinical-lead', 'therapist'])).toBe('/round');
     expect(homeOf(['billing'])).toBe('/no-screens');
   });
 });

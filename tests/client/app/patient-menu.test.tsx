@@ -8,11 +8,16 @@ import { keepOnDevice } from '#src/lib/device-store.ts';
 import { lost, noorSignedIn, serve, showTo } from '../clinic/screen.tsx';
 
 const user = userEvent.setup({ delay: null });
-const ines: Me = { ...noorSignedIn, name: 'Ines Valcourt', roles: ['patient'] };
+const ines: Me = {
+  ...noorSignedIn,
+  name: 'Ines Valcourt',
+  roles: ['patient'],
+  patient: { id: 'record-of-ines', arm: 'left', controlsTowards: 'right', state: 'active', stateSince: null },
+};
 
 it('asks before a sign-out that loses an unsent check-in, stays until it is answered, and then signs out', async () => {
   const sent = serve({ 'DELETE /api/session': () => lost });
-  keepOnDevice(storeOf(ines), keptNames.draft.full, { date: '2026-12-01' });
+  keepOnDevice(storeOf(ines, null), keptNames.draft.full, { date: '2026-12-01' });
   await showTo(ines, <PatientMenu />);
   await user.click(screen.getByRole('button', { name: 'Your account: Ines Valcourt' }));
   await user.click(await screen.findByRole('button', { name: 'Sign out' }));

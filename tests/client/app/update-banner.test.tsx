@@ -5,7 +5,7 @@ import { buildAnnounced } from '#src/lib/api.ts';
 import { useBusyWhile } from '#src/lib/busy.ts';
 import { startI18n } from '#src/lib/i18n.ts';
 
-const banner = () => screen.queryByText('A new version of Espalier is ready.');
+const banner = () => screen.queryByText('Espalier was updated.');
 
 beforeAll(startI18n);
 

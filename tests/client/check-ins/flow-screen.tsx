@@ -25,7 +25,14 @@ export async function arriveAsInes(): Promise<Me> {
     roles: ['patient'],
     // She did not choose to stay signed in, so nothing may outlive the tab.
     session: { idleEndsAt: '2026-12-01T09:10:00.000Z', endsAt: '2026-12-02T07:00:00.000Z' },
-    patient: { id: '0f3a7c1e-6a52-4f0b-8a44-3b6f6b0f2a11', arm: 'left', controlsTowards: 'right' },
+    secondFactor: 'not-needed',
+    patient: {
+      id: '0f3a7c1e-6a52-4f0b-8a44-3b6f6b0f2a11',
+      arm: 'left',
+      controlsTowards: 'right',
+      state: 'active',
+      stateSince: null,
+    },
   };
 }
 

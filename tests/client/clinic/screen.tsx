@@ -5,6 +5,8 @@ import { createMemoryRouter, RouterProvider } from 'react-router-dom';
 import { vi } from 'vitest';
 import type { Me } from '#shared/accounts/contract.ts';
 import { Problem } from '#shared/problems/problems.ts';
+import { RecordContext } from '#src/app/caring.ts';
+import { recordOf } from '#src/app/record-choice.ts';
 import { MeContext } from '#src/app/session.tsx';
 import { loadWords, startI18n } from '#src/lib/i18n.ts';
 import { createQueryClient } from '#src/lib/query-client.ts';
@@ -24,9 +26,12 @@ export const clinic: Me['clinic'] = {
 export const noorSignedIn: Me = {
   personId: '7a4d6f0e-0f38-4a5f-a1a5-0d5b3f2c9e31',
   name: 'Noor Haddad',
+  email: 'noor.haddad@orchard-lane.example',
   roles: ['therapist'],
   clinic,
   patient: null,
+  caresFor: [],
+  secondFactor: 'given',
   session: { idleEndsAt: null, endsAt: '2026-12-02T07:00:00.000Z' },
   writeToken: 'token',
 };
@@ -35,7 +40,8 @@ export const noorSignedIn: Me = {
 configure({ asyncUtilTimeout: 8_000 });
 vi.setConfig({ testTimeout: 30_000 });
 
-type Sent = { method: string; path: string; body: unknown };
+/** `record`: the record of somebody else that the call was about. */
+type Sent = { method: string; path: string; body: unknown; record?: string | undefined };
 /** What the server answers to one request: a value is a success, a problem a refusal, `lost` no answer at all. */
 export type Answer = (sent: Sent) => unknown;
 
@@ -48,8 +54,9 @@ export function serve(routes: Record<string, Answer>): Sent[] {
     const answer = routes[`${method} ${path}`];
     if (!answer) throw new Error(`Nobody answers for ${method} ${path}.`);
     const body: unknown = typeof init.body === 'string' ? JSON.parse(init.body) : undefined;
-    sent.push({ method, path, body });
-    const value = answer({ method, path, body });
+    const record = new Headers(init.headers).get('x-espalier-patient') ?? undefined;
+    sent.push({ method, path, body, record });
+    const value = answer({ method, path, body, record });
     if (value === lost) throw new TypeError('Failed to fetch');
     if (value instanceof Problem) {
       return new Response(JSON.stringify(value.toBody()), {
@@ -75,7 +82,9 @@ export async function showTo(me: Me, element: ReactElement, { at = '/', path = '
   const shown = render(
     <QueryClientProvider client={queryClient}>
       <MeContext value={me}>
-        <RouterProvider router={router} />
+        <RecordContext value={recordOf(me)}>
+          <RouterProvider router={router} />
+        </RecordContext>
       </MeContext>
     </QueryClientProvider>,
   );

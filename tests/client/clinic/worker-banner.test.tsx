@@ -23,11 +23,11 @@ describe('the banner over every clinic screen', () => {
     expect(await screen.findByText(/2 check-ins wait for the rules/)).toBeTruthy();
   });
 
-  it('says that mails were not sent, and to look at the round, though no check-in is late', async () => {
+  it('says that notifications did not get through, and to look at the round, though no check-in is late', async () => {
     await showBanner(() => ({ ...health, unsent: 2 }));
-    const title = await screen.findByText('2 mails could not be sent.');
+    const title = await screen.findByText('2 notifications did not get through.');
     expect(title.closest('[role="alert"]')?.textContent).toContain(
-      'Look at the round itself, not only at your mail.',
+      'Look at the round itself, not only at your phone and mail.',
     );
     expect(screen.queryByText(/may be shown late/)).toBeNull();
   });

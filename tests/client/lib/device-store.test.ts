@@ -1,9 +1,16 @@
 import { beforeEach, describe, expect, it } from 'vitest';
-import { clearDeviceStore, dropFromDevice, keepOnDevice, readFromDevice } from '#src/lib/device-store.ts';
+import {
+  clearDeviceStore,
+  dropFromDevice,
+  keepOnDevice,
+  readFromDevice,
+  recordsKept,
+} from '#src/lib/device-store.ts';
 
-const ines = { personId: 'ines', onDevice: true };
-const inesForNow = { personId: 'ines', onDevice: false };
-const wendell = { personId: 'wendell', onDevice: true };
+const ines = { personId: 'ines', recordId: null, onDevice: true };
+const inesForNow = { ...ines, onDevice: false };
+const inesForMarta = { ...ines, recordId: 'record-of-marta' };
+const wendell = { ...ines, personId: 'wendell' };
 
 beforeEach(() => {
   localStorage.clear();
@@ -26,16 +33,35 @@ describe('health data on the device', () => {
 
   it('goes when it was sent', () => {
     keepOnDevice(ines, 'check-in', { painNow: 3 });
-    dropFromDevice('ines', 'check-in');
+    dropFromDevice(ines, 'check-in');
     expect(readFromDevice(ines, 'check-in')).toBeNull();
   });
 
-  it('goes whole at sign-out, and the settings of the device stay', () => {
+  it('stands apart for each record that the same person fills in', () => {
+    keepOnDevice(inesForMarta, 'check-in', { painNow: 7 });
+    expect(readFromDevice(ines, 'check-in')).toBeNull();
+    keepOnDevice(ines, 'check-in', { painNow: 2 });
+    expect(readFromDevice(inesForMarta, 'check-in')).toEqual({ painNow: 7 });
+    dropFromDevice(inesForMarta, 'check-in');
+    expect(readFromDevice(ines, 'check-in')).toEqual({ painNow: 2 });
+  });
+
+  it('tells about which records something is kept, of this person only and only where it may be read', () => {
+    keepOnDevice(inesForMarta, 'alerts', [1]);
+    keepOnDevice({ ...inesForNow }, 'alerts', [2]);
+    keepOnDevice(ines, 'draft:new-thread/text', 'text');
+    keepOnDevice({ ...wendell, recordId: 'record-of-hana' }, 'alerts', [3]);
+    expect(recordsKept(ines, ['alerts'])).toEqual([null, 'record-of-marta']);
+    expect(recordsKept(inesForNow, ['alerts'])).toEqual([null]);
+    expect(recordsKept(ines, ['check-in'])).toEqual([]);
+  });
+
+  it('goes whole at sign-out, and with it what else this site kept here', () => {
     localStorage.setItem('espalier-controls:ines', 'left');
     keepOnDevice(ines, 'check-in', { painNow: 3 });
     keepOnDevice(inesForNow, 'draft', 'text');
     clearDeviceStore();
-    expect(Object.keys(localStorage)).toEqual(['espalier-controls:ines']);
+    expect(localStorage).toHaveLength(0);
     expect(sessionStorage).toHaveLength(0);
   });
 

@@ -3,7 +3,8 @@ import { io } from 'socket.io-client';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { hintEvent, type Hint } from '#shared/realtime/hints.ts';
 import { sweepUnevaluated } from '#server/features/check-ins/sweep.ts';
-import { hintChannel } from '#server/realtime/announce.ts';
+import { withTx } from '#server/db/with-tx.ts';
+import { announcePersonChange, hintChannel } from '#server/realtime/announce.ts';
 import {
   makeClinic,
   makePatient,
@@ -13,6 +14,7 @@ import {
 } from '#tests/support/clinic.ts';
 import { cloneDatabase, silentLog, type TestDatabase } from '#tests/support/database.ts';
 import { startWeb, type TestBrowser, type TestWeb } from '#tests/support/web.ts';
+import { plantGrant } from '../caregivers/grants.ts';
 import { checkInBody } from '../check-ins/bodies.ts';
 import { plantAlert, plantCheckIn, plantFlag, plantThread } from '../records.ts';
 
@@ -31,11 +33,14 @@ beforeAll(async () => {
   const [here, there] = [await makeClinic(database), await makeClinic(database)];
   const therapist = await makePerson(database, here, ['therapist']);
   patient = await makePatient(database, here, { lead: therapist });
+  const caregiver = await makePerson(database, here, ['caregiver']);
+  await plantGrant(database, patient, caregiver);
   const foreignTherapist = await makePerson(database, there, ['therapist']);
   const people: Record<string, TestPerson> = {
     'the patient': patient,
     'another patient': await makePatient(database, here, { lead: therapist }),
-    caregiver: await makePerson(database, here, ['caregiver']),
+    "the patient's caregiver": caregiver,
+    'caregiver of nobody': await makePerson(database, here, ['caregiver']),
     'therapist on the care team': therapist,
     'therapist not on it': await makePerson(database, here, ['therapist']),
     'on-call-clinician': await makePerson(database, here, ['on-call-clinician']),
@@ -109,6 +114,10 @@ const occasions = {
     const { threadId } = await plantThread(database, patient);
     const body = { id: randomUUID(), text: 'One more thing.' };
     expect((await phone.call('post', `/api/threads/${threadId}/messages`, body)).status).toBe(201);
+  },
+  session: async () => {
+    const actor = { kind: 'system', clinicId: patient.clinicId } as const;
+    await withTx(database.pools.app, actor, (tx) => announcePersonChange(tx, patient.personId));
   },
   everything: async () => {
     await database.asSuperuser.query(

@@ -1,8 +1,10 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { may, roles } from '#shared/access/permissions.ts';
 import { isPublic, type Route } from '#server/http/route.ts';
 import { allRoutes } from '#server/routes.ts';
 import type { ActingAs } from '#server/db/actor.ts';
 import { withTx } from '#server/db/with-tx.ts';
+import { notShown, shownActions } from '#server/features/activity/words.ts';
 import { cloneDatabase, type TestDatabase } from '#tests/support/database.ts';
 import { startWeb, type TestWeb } from '#tests/support/web.ts';
 import { plantFlag, plantThread } from '../records.ts';
@@ -65,8 +67,8 @@ describe.each(routes.map((route) => ({ key: keyOf(route), route })))('$key', ({ 
     const cells = cellsOf(key);
     const declared = typeof route.audit === 'string' ? route.audit : (routeFixtures[key]?.writes ?? null);
     const expected = (cell: Cell): string[] => {
-      if (cell.answer.status < 300) return declared === null ? [] : [declared];
-      return cell.caller === 'anonymous' ? [] : ['access.denied'];
+      if (cell.answer.status < 300) return declared === null ? [] : [declared].flat();
+      return cell.caller === 'anonymous' || cell.asksReason ? [] : ['access.denied'];
     };
     expect(byName(cells, ({ audit }) => audit.map(({ action }) => action))).toEqual(byName(cells, expected));
     for (const { actor, audit } of cells.filter((cell) => cell.actor !== null)) {
@@ -78,11 +80,20 @@ describe.each(routes.map((route) => ({ key: keyOf(route), route })))('$key', ({ 
 
   it('names the route and the id asked for in each denial', () => {
     const denied = cellsOf(key).filter(({ audit }) => audit.some(({ action }) => action === 'access.denied'));
-    expect(denied.length > 0).toBe(!isPublic(route) && route.access.permission !== 'session:own');
-    for (const { audit, id } of denied) {
+    // What everybody may do about their own is denied to nobody.
+    const isOwn =
+      !isPublic(route) &&
+      routeFixtures[key]?.param === undefined &&
+      roles.every((role) => may([role], route.access.permission));
+    expect(denied.length > 0).toBe(!isPublic(route) && !isOwn);
+    for (const { audit, id, also } of denied) {
+      const isId = (value: string) => /^[0-9a-f-]{36}$/.test(value);
       expect(audit[0]?.detail).toEqual({
         route: key,
         ...(id === null ? {} : { [routeFixtures[key]!.param!]: id }),
+        ...Object.fromEntries(
+          Object.entries(also).map(([name, value]) => [name, isId(value) ? value : 'not an id']),
+        ),
       });
     }
   });
@@ -117,12 +128,29 @@ it('shows in each list the rows that the one who asks may open, and none of anot
     'on-call-clinician': wholeClinic,
     'clinical-lead': wholeClinic,
   });
+  expect(seenBy('get /api/patients')).toEqual({
+    therapist: wholeClinic,
+    'on-call-clinician': wholeClinic,
+    'clinical-lead': wholeClinic,
+    administrator: wholeClinic,
+  });
   expect(seenBy('get /api/threads')).toEqual({
     patient: ['own'],
+    caregiver: ['own'],
     therapist: ['own'],
     'on-call-clinician': wholeClinic,
     'clinical-lead': wholeClinic,
   });
+});
+
+it('has a word of the patient’s activity, or a reason for none, for every act on a patient’s record', () => {
+  const acts = [...cellsByRoute.values()].flatMap((cells) =>
+    cells.flatMap(({ audit }) => audit.filter(({ patientId }) => patientId !== null)),
+  );
+  const actions = [...new Set(acts.map(({ action }) => action))];
+  expect(actions.length).toBeGreaterThan(20);
+  const known = [...Object.keys(shownActions), ...Object.keys(notShown)];
+  expect(actions.filter((action) => !known.includes(action))).toEqual([]);
 });
 
 it('is the committed table: a changed grant is a changed line', async () => {

@@ -2,42 +2,18 @@ import { randomUUID } from 'node:crypto';
 import { coversClinic, isClinician, type Role } from '#shared/access/permissions.ts';
 import type { MorningRound } from '#shared/triage/contract.ts';
 import type { ThreadSummary } from '#shared/threads/contract.ts';
-import { testPassword, type TestPatient, type TestPerson } from '#tests/support/clinic.ts';
-import type { TestDatabase } from '#tests/support/database.ts';
 import { alertBody, checkInBody } from '../check-ins/bodies.ts';
 import { plantAlert, plantCheckIn, plantFlag, plantThread } from '../records.ts';
+import { accountFixtures } from './account-fixtures.ts';
+import { nothing, ownOnly, wholeClinic, type RouteFixture } from './fixture.ts';
+import { notificationFixtures } from './notification-fixtures.ts';
+import { patientFixtures } from './patient-fixtures.ts';
+import { peopleFixtures } from './people-fixtures.ts';
+import { pushFixtures } from './push-fixtures.ts';
 import type { Relation } from './scene.ts';
 
-type Request = { id?: string; body?: unknown };
-
-export type RouteFixture = {
-  /** Makes a row of the owner and the request for it, anew for every call. `worker` is a clinician there. */
-  request: (
-    database: TestDatabase,
-    cast: { actor: TestPerson; owner: TestPatient; worker: TestPerson },
-  ) => Promise<Request>;
-  /** The parameter that names the row; without one, the route is about no row but the asker's own. */
-  param?: 'alertId' | 'flagId' | 'threadId';
-  /** The door of the row: whether one who holds the permission sees it. */
-  door?: (role: Role, relation: Relation) => boolean;
-  /** Holders of the permission whom the use case refuses all the same. */
-  refuses?: (role: Role) => boolean;
-  /** The body's id is made by the client: an id that somebody else used already is nobody's business. */
-  clientIds?: true;
-  /** Whose rows a list shows, by the ids of their patients. */
-  patientsIn?: (body: unknown) => string[];
-  /** What a public route writes once it knows who it is, beside its declaration of none. */
-  writes?: string;
-  /** The session is over afterwards: sign in anew. */
-  endsSession?: true;
-};
-
-const ownOnly = (_role: Role, relation: Relation) => relation === 'own';
-const wholeClinic = (_role: Role, relation: Relation) => relation !== "other clinic's";
 const threadDoor = (role: Role, relation: Relation) =>
   coversClinic([role]) ? wholeClinic(role, relation) : relation === 'own';
-
-const nothing = async (): Promise<Request> => ({});
 
 const flag =
   (body?: () => unknown, claimed = false): RouteFixture['request'] =>
@@ -55,8 +31,8 @@ const thread =
 
 const alert =
   (body?: () => unknown): RouteFixture['request'] =>
-  async (database, { owner }) => {
-    const { clientId } = await plantAlert(database, owner);
+  async (database, { owner, author }) => {
+    const { clientId } = await plantAlert(database, { ...owner, personId: author.personId });
     return { id: clientId, body: body?.() };
   };
 
@@ -68,14 +44,8 @@ const text = () => ({ id: randomUUID(), text: 'Please ring us today.' });
 
 /** Every route by method and path. A route that is missing here fails the matrix. */
 export const routeFixtures: Record<string, RouteFixture> = {
-  'get /api/session': { request: nothing },
-  'post /api/session': {
-    request: async (_database, { actor }) => ({ body: { email: actor.email, password: testPassword } }),
-    writes: 'session.started',
-    endsSession: true,
-  },
-  'delete /api/session': { request: nothing, endsSession: true },
-  'post /api/session/activity': { request: nothing },
+  ...accountFixtures,
+
   'get /api/sign-in-page': { request: nothing },
   'get /api/worker': { request: nothing },
   'get /api/today': { request: nothing },
@@ -137,4 +107,9 @@ export const routeFixtures: Record<string, RouteFixture> = {
   'post /api/threads/:threadId/messages': { ...onThreads, request: thread(text) },
   'post /api/threads/:threadId/seen': { ...onThreads, request: thread(() => ({ sequence: 1 })) },
   'post /api/threads/:threadId/close': { ...onThreads, request: thread() },
+
+  ...notificationFixtures,
+  ...patientFixtures,
+  ...peopleFixtures,
+  ...pushFixtures,
 };

@@ -7,6 +7,7 @@ import {
   type TestPerson,
 } from '#tests/support/clinic.ts';
 import type { TestDatabase } from '#tests/support/database.ts';
+import { plantGrant } from '../caregivers/grants.ts';
 
 /** Whose row is asked for, as seen from the one who asks. */
 export const relations = ['own', "colleague's", "other patient's", "other clinic's"] as const;
@@ -16,7 +17,10 @@ export type Relation = (typeof relations)[number];
 export type Cast = { actor: TestPerson; rowsOf: Record<Relation, TestPatient> };
 
 export type Scene = {
-  /** One person a role. A patient's own rows are the patient's; anybody else is on the care team of `own`. */
+  /**
+   * One person a role. A patient's own rows are the patient's, a caregiver's those of whom they look after; anybody
+   * else is on the care team of `own`.
+   */
   casts: Record<Role, Cast>;
   /** Who would work on rows of the other clinic. */
   otherTherapist: TestPerson;
@@ -36,6 +40,11 @@ export const setScene = async (database: TestDatabase): Promise<Scene> => {
     if (role === 'patient') {
       const own = await makePatient(database, here, { lead: colleague });
       casts[role] = { actor: own, rowsOf: { own, ...rowsOfOthers } };
+    } else if (role === 'caregiver') {
+      const actor = await makePerson(database, here, [role]);
+      const own = await makePatient(database, here, { lead: colleague });
+      await plantGrant(database, own, actor);
+      casts[role] = { actor, rowsOf: { own, ...rowsOfOthers } };
     } else {
       const actor = await makePerson(database, here, [role]);
       const own = await makePatient(database, here, { lead: actor });

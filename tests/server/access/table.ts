@@ -1,9 +1,12 @@
 import { randomUUID } from 'node:crypto';
 import { may, roles, type Role } from '#shared/access/permissions.ts';
+import { problemType, type ProblemBody } from '#shared/problems/problems.ts';
 import { isPublic, type Route } from '#server/http/route.ts';
 import type { TestDatabase } from '#tests/support/database.ts';
 import type { Answer, TestBrowser, TestWeb } from '#tests/support/web.ts';
-import { routeFixtures, type RouteFixture } from './route-fixtures.ts';
+import { actingFor } from '../caregivers/grants.ts';
+import type { RouteFixture } from './fixture.ts';
+import { routeFixtures } from './route-fixtures.ts';
 import { relations, type Cast, type Relation, type Scene } from './scene.ts';
 
 type Caller = Role | 'anonymous';
@@ -12,6 +15,7 @@ type AuditEntry = {
   action: string;
   clinicId: string;
   personId: string | null;
+  patientId: string | null;
   detail: Record<string, unknown> | null;
 };
 
@@ -22,9 +26,13 @@ export type Cell = {
   asked: Asked;
   /** The id in the address. */
   id: string | null;
+  /** What else stood in the address. */
+  also: Record<string, string>;
   answer: Answer;
   audit: AuditEntry[];
   expectedStatus: number;
+  /** The answer asks why the chart is opened, and refuses nothing yet. */
+  asksReason: boolean;
   /** Of a list: whose rows it showed. */
   sees: Relation[] | null;
 };
@@ -38,6 +46,7 @@ const expectedStatus = (route: Route, fixture: RouteFixture, caller: Caller, ask
   if (!may([caller], route.access.permission) || fixture.refuses?.(caller)) return 403;
   if (asked === 'missing') return 404;
   if (asked !== 'none' && fixture.door && !fixture.door(caller, asked)) return 404;
+  if (asked !== 'none' && fixture.asksReason?.(caller, asked)) return 403;
   return status;
 };
 
@@ -49,7 +58,7 @@ const askedOf = (fixture: RouteFixture): Asked[] => {
 type Stage = { database: TestDatabase; web: TestWeb; scene: Scene };
 
 const callCell = async (
-  { database, scene }: Stage,
+  { database, web, scene }: Stage,
   route: Route,
   { caller, asked, browser }: { caller: Caller; asked: Asked; browser: TestBrowser },
 ): Promise<Cell> => {
@@ -57,13 +66,24 @@ const callCell = async (
   const cast = scene.casts[caller === 'anonymous' ? 'patient' : caller];
   const owner = cast.rowsOf[asked === 'none' || asked === 'missing' ? 'own' : asked];
   const worker = asked === "other clinic's" ? scene.otherTherapist : cast.actor;
-  const made = await fixture.request(database, { actor: cast.actor, owner, worker });
+  const isActing = caller === 'caregiver';
+  const author = isActing && owner === cast.rowsOf.own ? cast.actor : owner;
+  const made = await fixture.request(database, { actor: cast.actor, owner, worker, author, origin: web.url });
   const id = fixture.param ? (asked === 'missing' ? randomUUID() : made.id!) : null;
   await database.asSuperuser.query('delete from audit_entries');
   const { method, path } = route.contract;
-  const answer = await browser.call(method, path.replace(`:${fixture.param}`, id ?? ''), made.body);
+  const also = made.also ?? {};
+  const inPath = { ...also, ...(fixture.param ? { [fixture.param]: id ?? '' } : {}) };
+  const address = Object.entries(inPath).reduce(
+    (text, [name, value]) => text.replace(`:${name}`, value),
+    path,
+  );
+  // A caregiver asks for everything as the one who looks after the patient of `own`.
+  const headers = isActing ? actingFor(cast.rowsOf.own) : {};
+  const answer = await browser.call(method, address, made.body, headers);
   const { rows: audit } = await database.asSuperuser.query<AuditEntry>(
-    'select action, clinic_id as "clinicId", person_id as "personId", detail from audit_entries order by action',
+    `select action, clinic_id as "clinicId", person_id as "personId", patient_id as "patientId", detail
+     from audit_entries order by action`,
   );
   const shown = fixture.patientsIn && answer.status === 200 ? fixture.patientsIn(answer.body) : null;
   return {
@@ -71,9 +91,11 @@ const callCell = async (
     actor: caller === 'anonymous' ? null : cast.actor,
     asked,
     id,
+    also,
     answer,
     audit,
     expectedStatus: expectedStatus(route, fixture, caller, asked),
+    asksReason: (answer.body as ProblemBody | null)?.type === problemType('reason-needed'),
     sees: shown && relations.filter((relation) => shown.includes(cast.rowsOf[relation].patientId)),
   };
 };

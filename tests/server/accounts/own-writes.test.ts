@@ -3,6 +3,7 @@ import type { AddressInfo } from 'node:net';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { createApp } from '#server/app.ts';
 import { makeClinic, makePatient, testPassword, type TestPatient } from '#tests/support/clinic.ts';
+import { testSecrets } from '#tests/support/secrets.ts';
 import { cloneDatabase, silentLog, type TestDatabase } from '#tests/support/database.ts';
 import { startWeb, type TestBrowser, type TestWeb } from '#tests/support/web.ts';
 import { checkInBody } from '../check-ins/bodies.ts';
@@ -125,6 +126,7 @@ describe('the cookie', () => {
         publicUrl: 'https://clinic.example',
         trustProxy: '1',
         sessionSecret: 'test-session-secret-of-32-characters',
+        ...testSecrets,
         buildId: 'test',
       });
       server = createServer(app);

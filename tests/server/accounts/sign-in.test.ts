@@ -107,6 +107,14 @@ it('verifies at most two passwords at a time', async () => {
   verify.mockImplementation(real.verify);
 });
 
+it('lets one address fill a part of the line only, so that others still come in', async () => {
+  const flood = Array.from({ length: 60 }, () => verifyPassword(null, 'wrong', '203.0.113.7'));
+  const settled = Promise.allSettled(flood);
+  expect(await verifyPassword(null, 'wrong', '203.0.113.8')).toBe(false);
+  const refused = (await settled).filter(({ status }) => status === 'rejected');
+  expect(refused.length).toBe(60 - 15 - 2);
+});
+
 describe('a right sign-in', () => {
   it('takes the e-mail in any case and the password in any Unicode form', async () => {
     const composed = 'un été à la montagne';

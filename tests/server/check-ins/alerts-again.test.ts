@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import type { AlertReceipt } from '#shared/check-ins/contract.ts';
+import { markTold } from '../records.ts';
 import { alertScene } from './alert-scene.ts';
 
 const { scene, sweep, flagsOfPatient, caseOf, send, finish, callMistake } = alertScene();
@@ -26,6 +27,7 @@ describe('a tick after the flag was closed', () => {
     await callMistake(first.id);
     const flagId = (await flagsOfPatient())[0]!.id;
     expect((await close(flagId)).status).toBe(200);
+    await markTold(scene.database);
     const before = await mails();
 
     await send({ checkInId: first.checkInId, answers: { danger: ['chest-or-breathing'] } });

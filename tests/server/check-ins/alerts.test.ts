@@ -3,6 +3,7 @@ import { describe, expect, it } from 'vitest';
 import type { AlertReceipt } from '#shared/check-ins/contract.ts';
 import { makePatient, makePerson } from '#tests/support/clinic.ts';
 import { plantAlert } from '../records.ts';
+import { markTold } from '../records.ts';
 import { alertScene } from './alert-scene.ts';
 
 const { scene, sweep, flagsOfPatient, caseOf, send, finish } = alertScene();
@@ -47,6 +48,7 @@ describe('an alert at the tick and its finished check-in', () => {
   it('tell the people who answer for the patient again of a new emergency finding', async () => {
     const { checkInId } = await send();
     await sweep();
+    await markTold(scene.database);
     await finish(checkInId, { answers: { danger: ['bleeding', 'cold-hand'] } });
     await sweep();
     const { rows } = await scene.database.asSuperuser.query<{ occasion: string }>(

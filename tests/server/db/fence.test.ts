@@ -1,14 +1,17 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { cloneDatabase, type TestDatabase } from '#tests/support/database.ts';
 import { fencedTables } from '../whole-clinic.ts';
+import { gateTables } from './gate-tables.ts';
 
-/** Outside the fence, for the reasons given in the gate's schema. */
-const gateTables = [
-  'browser_sessions',
+/** Those of them that know which clinic somebody belongs to. */
+const gateTablesOfClinics = [
+  'authenticators',
   'credentials',
-  'sign_in_attempts',
+  'one_time_tokens',
+  'passkeys',
+  'pending_sign_ins',
+  'recovery_codes',
   'signed_in_sessions',
-  'worker_heartbeats',
 ];
 const clinicTables = [...fencedTables, 'clinics'].sort();
 
@@ -42,7 +45,7 @@ describe('row security', () => {
        where table_schema = 'public' and column_name = 'clinic_id'`,
     );
     const outside = withClinic.filter((table) => !clinicTables.includes(table));
-    expect(outside.sort()).toEqual(['credentials', 'signed_in_sessions']);
+    expect(outside.sort()).toEqual(gateTablesOfClinics);
   });
 
   it.each(clinicTables)('is on and forced for %s, with the fence for reading and writing', async (table) => {
@@ -66,7 +69,7 @@ describe('row security', () => {
       // Without a check of its own a policy checks what is written by what may be read.
       with_check: null,
     });
-    const reachedByFinder = ['clinics', 'check_ins', 'alerts'].includes(table);
+    const reachedByFinder = ['clinics', 'check_ins', 'alerts', 'notifications'].includes(table);
     expect(policies.slice(1)).toEqual(
       reachedByFinder
         ? [expect.objectContaining({ name: 'finder_reads_ids', roles: ['espalier_finder'], cmd: 'SELECT' })]
@@ -117,84 +120,6 @@ describe('roles', () => {
   });
 });
 
-const rightsOf = async (role: string): Promise<Record<string, string>> => {
-  const rows = await read<{ table: string; rights: string }>(
-    `select t.tablename::text as table, string_agg(right_, ' ' order by right_) as rights
-     from pg_tables t, unnest(array['select', 'insert', 'update', 'delete', 'truncate', 'references', 'trigger']) right_
-     where t.schemaname = 'public' and has_table_privilege($1, 'public.' || t.tablename, right_)
-     group by 1`,
-    [role],
-  );
-  return Object.fromEntries(rows.map(({ table, rights }) => [table, rights]));
-};
-
-/** Rights to single columns, where there is none to the whole table. */
-const columnsOf = (role: string, right: string) =>
-  one<string>(
-    `select t.relname || '.' || c.attname as value
-     from pg_class t join pg_attribute c on c.attrelid = t.oid and c.attnum > 0 and not c.attisdropped
-     where t.relnamespace = 'public'::regnamespace and t.relkind = 'r'
-       and has_column_privilege('${role}', t.oid, c.attnum, '${right}')
-       and not has_table_privilege('${role}', t.oid, '${right}')
-     order by 1`,
-  );
-
-describe('grants', () => {
-  it('let the application read, add, and change only what has a state', async () => {
-    expect(await rightsOf('espalier_app')).toEqual({
-      alert_mistakes: 'insert select',
-      alerts: 'insert select',
-      audit_entries: 'insert',
-      care_team_members: 'select',
-      check_ins: 'insert select',
-      clinics: 'select',
-      findings: 'insert select update',
-      flag_events: 'insert select',
-      flags: 'insert select update',
-      messages: 'insert select',
-      notifications: 'insert select update',
-      operation_cards: 'select',
-      patients: 'select',
-      people: 'select',
-      person_roles: 'select',
-      plans: 'select',
-      sign_offs: 'select',
-      thread_participants: 'insert select update',
-      threads: 'insert select update',
-    });
-  });
-
-  it('let nothing of a check-in or an alert be changed but when it was evaluated', async () => {
-    expect(await columnsOf('espalier_app', 'update')).toEqual([
-      'alerts.evaluated_at',
-      'check_ins.evaluated_at',
-    ]);
-  });
-
-  it('let the gate use its own tables and see none of a clinic', async () => {
-    const everything = 'delete insert select update';
-    expect(await rightsOf('espalier_gate')).toEqual(
-      Object.fromEntries(gateTables.map((table) => [table, everything])),
-    );
-    expect(await columnsOf('espalier_gate', 'select')).toEqual([]);
-    await expect(database.pools.gate.query('select 1 from patients')).rejects.toThrow('permission denied');
-    await expect(database.pools.gate.query('select 1 from jobs.job')).rejects.toThrow('permission denied');
-  });
-
-  it.each(gateTables)('let the application see nothing of the gate: %s', async (table) => {
-    await expect(database.pools.app.query(`select 1 from ${table}`)).rejects.toThrow('permission denied');
-  });
-
-  it('let the finder read ids and times only', async () => {
-    expect(await rightsOf('espalier_finder')).toEqual({});
-    expect(await columnsOf('espalier_finder', 'select')).toEqual([
-      ...['alerts.clinic_id', 'alerts.evaluated_at', 'alerts.id', 'alerts.received_at'],
-      ...['check_ins.clinic_id', 'check_ins.evaluated_at', 'check_ins.id', 'check_ins.received_at'],
-      'clinics.id',
-    ]);
-  });
-});
-
 describe('keys and functions', () => {
   it('make every reference between tables of a clinic composite, beginning with the clinic', async () => {
     const keys = await read<{ name: string; own: string[]; target: string; theirs: string[] }>(
@@ -221,7 +146,7 @@ describe('keys and functions', () => {
        where table_schema = 'public' and column_name = 'clinic_id'
          and not exists (select from pg_constraint k where k.contype = 'f' and k.conrelid = ('public.' || c.table_name)::regclass)`,
     );
-    expect(unbound.sort()).toEqual(['credentials', 'signed_in_sessions']);
+    expect(unbound.sort()).toEqual(gateTablesOfClinics);
   });
 
   it('let the functions that look across clinics return ids only, to the application only', async () => {
@@ -242,6 +167,8 @@ describe('keys and functions', () => {
       everybody: false,
     };
     expect(functions).toEqual([
+      { name: 'all_clinic_ids', result: 'TABLE(clinic_id uuid)', ...shape },
+      { name: 'due_notifications', result: 'TABLE(clinic_id uuid, id uuid)', ...shape },
       { name: 'only_clinic_id', result: 'uuid', ...shape },
       { name: 'unevaluated_before', result: 'TABLE(clinic_id uuid, kind text, id uuid)', ...shape },
     ]);

@@ -27,10 +27,12 @@ const asHere = (text: string, values: unknown[] = []) =>
 const asNobody = (text: string, values: unknown[] = []) =>
   withTx(database.pools.app, { kind: 'anonymous' }, (tx) => tx.$client.query(text, values));
 
-const readable = fencedTables.filter((table) => table !== 'audit_entries');
 const insertable = [
   ...(['check_ins', 'alerts', 'alert_mistakes', 'flags', 'findings', 'flag_events'] as const),
   ...(['threads', 'messages', 'thread_participants', 'notifications', 'audit_entries'] as const),
+  ...(['people', 'person_roles', 'patients', 'operation_cards', 'care_team_members', 'plans'] as const),
+  ...(['patient_state_changes', 'chart_openings', 'caregivers', 'invitations', 'two_person_acts'] as const),
+  ...(['notification_settings', 'push_subscriptions'] as const),
 ];
 const updatable: [table: string, column: string][] = [
   ['check_ins', 'evaluated_at = now()'],
@@ -40,6 +42,16 @@ const updatable: [table: string, column: string][] = [
   ['threads', `state = 'closed'`],
   ['thread_participants', 'seen_sequence = 99'],
   ['notifications', `state = 'failed'`],
+  ['notification_settings', 'enabled = true'],
+  ['push_subscriptions', `device_name = 'another'`],
+  ['people', `name = 'Another'`],
+  ['person_roles', `role = role`],
+  ['patients', `state = 'paused'`],
+  ['operation_cards', `surgeon = 'Another'`],
+  ['care_team_members', 'is_lead = false'],
+  ['caregivers', 'may_check_in = false'],
+  ['invitations', 'revoked_at = now()'],
+  ['two_person_acts', `state = 'refused'`],
 ];
 
 /** A row of the other clinic as a new one, in a shape that goes into its own table again. */
@@ -54,7 +66,7 @@ const insertCopy = (table: string) =>
   `insert into ${table} select * from jsonb_populate_record(null::${table}, $1::jsonb)`;
 
 describe('as somebody of a clinic', () => {
-  it.each(readable)('no row of another clinic can be read from %s', async (table) => {
+  it.each(fencedTables)('no row of another clinic can be read from %s', async (table) => {
     const { rows } = await asHere(`select distinct clinic_id from ${table}`);
     expect(rows).toEqual([{ clinic_id: here.clinicId }]);
     expect((await asHere(`select 1 from ${table} where clinic_id = $1`, [there.clinicId])).rows).toEqual([]);
@@ -76,14 +88,14 @@ describe('as somebody of a clinic', () => {
     expect((await asHere(`update ${table} set ${change}`)).rowCount).toBeGreaterThan(0);
   });
 
-  it.each(['flags', 'findings', 'threads', 'thread_participants', 'notifications'])(
-    'no row of %s can be moved into another clinic',
-    async (table) => {
-      await expect(asHere(`update ${table} set clinic_id = $1`, [there.clinicId])).rejects.toThrow(
-        'violates row-level security policy',
-      );
-    },
-  );
+  it.each([
+    ...['flags', 'findings', 'threads', 'thread_participants', 'notifications', 'notification_settings'],
+    ...['push_subscriptions', 'people', 'patients', 'caregivers', 'invitations', 'two_person_acts'],
+  ])('no row of %s can be moved into another clinic', async (table) => {
+    await expect(asHere(`update ${table} set clinic_id = $1`, [there.clinicId])).rejects.toThrow(
+      'violates row-level security policy',
+    );
+  });
 
   it('no row can refer to a row of another clinic, although keys pass row security', async () => {
     await expect(
@@ -96,7 +108,7 @@ describe('as somebody of a clinic', () => {
 });
 
 describe('as nobody', () => {
-  it.each(readable)('nothing can be read from %s', async (table) => {
+  it.each(fencedTables)('nothing can be read from %s', async (table) => {
     expect((await asNobody(`select 1 from ${table}`)).rows).toEqual([]);
   });
 

@@ -4,6 +4,7 @@ import { withTx, type Tx } from '#server/db/with-tx.ts';
 import { runDemoAct, type DemoAct } from '#server/demo/acts.ts';
 import { demoClinicId } from '#server/demo/clinic.ts';
 import { loadPersonActor } from '#server/features/accounts/queries.ts';
+import { testSecrets } from '#tests/support/secrets.ts';
 import { cloneDatabase, type TestDatabase } from '#tests/support/database.ts';
 
 export type DemoDatabase = TestDatabase & {
@@ -18,8 +19,8 @@ export const demoDatabase = async (): Promise<DemoDatabase> => {
   const owner = new pg.Pool({ connectionString: database.urls.owner, max: 1, options: '-c timezone=UTC' });
   return {
     ...database,
-    act: (act, now) => runDemoAct(owner, act, now),
-    actAsSuperuser: (act, now) => runDemoAct(database.asSuperuser, act, now),
+    act: (act, now) => runDemoAct(owner, act, now, testSecrets),
+    actAsSuperuser: (act, now) => runDemoAct(database.asSuperuser, act, now, testSecrets),
     drop: async () => {
       await owner.end();
       await database.drop();

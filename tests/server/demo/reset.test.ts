@@ -3,8 +3,9 @@ import { randomUUID } from 'node:crypto';
 import { fileURLToPath } from 'node:url';
 import { promisify } from 'node:util';
 import { getTableName } from 'drizzle-orm';
+import { testSecrets } from '#tests/support/secrets.ts';
 import { afterAll, beforeAll, expect, test } from 'vitest';
-import { demoAccounts } from '#server/demo/accounts.ts';
+import { demoAccounts, demoAuthenticatorSecrets } from '#server/demo/accounts.ts';
 import { demoClinicId } from '#server/demo/clinic.ts';
 import { personIdOf } from '#server/demo/patients.ts';
 import { staffId } from '#server/demo/staff.ts';
@@ -12,12 +13,12 @@ import { clinicTables } from '#server/demo/tables.ts';
 import { startThread } from '#server/features/threads/starting.ts';
 import { claim } from '#server/features/triage/work.ts';
 import { startSession } from '#server/http/sessions.ts';
-import { plantWholeClinic, type WholeClinic } from '../whole-clinic.ts';
+import { plantWaysIn, plantWholeClinic, type WholeClinic } from '../whole-clinic.ts';
 import { asPerson, demoDatabase, rowsOf, type DemoDatabase } from './demo.ts';
 
 /** A Tuesday, 10:50 in the clinic. */
 const now = new Date('2026-12-01T15:50:00Z');
-const withoutSalts = ['password_hash'];
+const withoutSalts = ['password_hash', 'sealed_secret'];
 let demo: DemoDatabase;
 let other: WholeClinic;
 let fresh: Record<string, string[]>;
@@ -27,7 +28,7 @@ let untouched: Record<string, string[]>;
 const signIn = async (clinicId: string, personId: string): Promise<void> => {
   const session = await startSession(
     demo.pools.gate,
-    { clinicId, personId, isStaff: true, staySignedIn: false, userAgent: null },
+    { clinicId, personId, isStaff: true, staySignedIn: false, secondFactor: null, userAgent: null },
     now,
   );
   await demo.asSuperuser.query('insert into browser_sessions (sid, sess, expire) values ($1, $2, $3)', [
@@ -41,7 +42,12 @@ const runProgram = async (act: string): Promise<string> => {
   const program = ['node_modules/tsx/dist/cli.mjs', 'server/demo/index.ts', act];
   const { stdout } = await promisify(execFile)(process.execPath, program, {
     cwd: fileURLToPath(new URL('../../..', import.meta.url)),
-    env: { PATH: process.env.PATH, OWNER_DATABASE_URL: demo.urls.owner },
+    env: {
+      PATH: process.env.PATH,
+      OWNER_DATABASE_URL: demo.urls.owner,
+      TOKEN_SECRET: testSecrets.tokenSecret,
+      SEAL_SECRET: testSecrets.sealSecret,
+    },
   });
   return stdout;
 };
@@ -71,6 +77,7 @@ beforeAll(async () => {
   demo = await demoDatabase();
   other = await plantWholeClinic(demo);
   await signIn(other.clinicId, other.therapist.personId);
+  await plantWaysIn(demo, other.therapist);
   untouched = await rowsOf(demo, other.clinicId);
   await demo.act('fill', now);
   fresh = await rowsOf(demo, demoClinicId, withoutSalts);
@@ -122,9 +129,21 @@ test('the demo knows every table behind the fence', async () => {
 
 test('the program does what its argument says and ends with the accounts on a line of their own', async () => {
   const stdout = await runProgram('fill');
-  expect(JSON.parse(stdout.trimEnd().split('\n').at(-1)!)).toEqual({ accounts: demoAccounts });
+  expect(JSON.parse(stdout.trimEnd().split('\n').at(-1)!)).toEqual({
+    accounts: demoAccounts,
+    authenticators: demoAuthenticatorSecrets,
+  });
 }, 60_000);
 
 test('the program refuses an act that it does not know', async () => {
-  await expect(runProgram('refill')).rejects.toThrow('Say what to do: fill, re-anchor or reset.');
+  await expect(runProgram('refill')).rejects.toThrow('Say what to do: fill, re-anchor, remove or reset.');
+}, 60_000);
+
+test('a removal takes the demo’s people and ways in away, and nothing of another clinic', async () => {
+  await demo.act('remove', now);
+  for (const [table, rows] of Object.entries(await rowsOf(demo, demoClinicId))) {
+    expect(rows, table).toEqual([]);
+  }
+  expect(await rowsOf(demo, other.clinicId)).toEqual(untouched);
+  await demo.act('remove', now);
 }, 60_000);

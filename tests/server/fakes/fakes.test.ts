@@ -6,9 +6,10 @@ import { join } from 'node:path';
 import { createInterface } from 'node:readline';
 import { createTransport } from 'nodemailer';
 import { afterEach, beforeEach, expect, test } from 'vitest';
-import type { Mail } from '#server/fakes/mail.ts';
-import { openMailFile } from '#server/fakes/mail-file.ts';
+import { openLinesFile } from '#server/fakes/lines-file.ts';
+import type { Sent, SentMail } from '#server/fakes/sent.ts';
 import { freePort } from '../../../scripts/ports.mjs';
+import { fakeAccount } from './running.ts';
 
 let folder: string;
 let smtpPort: number;
@@ -17,7 +18,14 @@ let fakes: ChildProcess;
 
 async function start(): Promise<void> {
   fakes = spawn(process.execPath, ['--import', 'tsx', 'server/fakes/index.ts'], {
-    env: { ...process.env, SMTP_PORT: String(smtpPort), OUTBOX_PORT: String(outboxPort), FAKES_DIR: folder },
+    env: {
+      ...process.env,
+      SMTP_PORT: String(smtpPort),
+      OUTBOX_PORT: String(outboxPort),
+      FAKES_DIR: folder,
+      TWILIO_ACCOUNT_SID: fakeAccount.accountSid,
+      TWILIO_AUTH_TOKEN: fakeAccount.authToken,
+    },
     stdio: ['ignore', 'pipe', 'inherit', 'ipc'],
   });
   for await (const line of createInterface({ input: fakes.stdout! })) {
@@ -32,19 +40,23 @@ async function ended(): Promise<number | null> {
   return code;
 }
 
-function send(subject: string, auth?: { user: string; pass: string }): Promise<unknown> {
+function send(
+  subject: string,
+  auth?: { user: string; pass: string },
+  to = 'Noor Haddad <noor@orchard-lane.example>',
+): Promise<unknown> {
   return createTransport({ host: '127.0.0.1', port: smtpPort, auth }).sendMail({
     from: 'Espalier <no-reply@espalier.example>',
-    to: 'Noor Haddad <noor@orchard-lane.example>',
+    to,
     subject,
     text: 'Öffne Espalier – lesen.',
     html: '<p>Open Espalier to read it.</p>',
   });
 }
 
-async function mails(): Promise<Mail[]> {
-  const response = await fetch(`http://127.0.0.1:${outboxPort}/mails`);
-  return (await response.json()) as Mail[];
+async function mails(): Promise<SentMail[]> {
+  const response = await fetch(`http://127.0.0.1:${outboxPort}/sent`);
+  return ((await response.json()) as Sent[]).filter((one) => one.kind === 'mail');
 }
 
 beforeEach(async () => {
@@ -90,6 +102,17 @@ test('while told to refuse it answers 451, which means try again, and keeps noth
   expect((await mails()).map((mail) => mail.subject)).toEqual(['accepted']);
 });
 
+test('a mailbox that is not there is refused for good, before any mail is taken', async () => {
+  for (const to of ['bounce@orchard-lane.example', 'bounced-address@people.example', 'noor@bounce.example']) {
+    // 550: the mailbox is unavailable (RFC 5321, 4.2.3); 5.1.1: it is not there (RFC 3463, 3.2).
+    await expect(send('refused', undefined, to)).rejects.toMatchObject({
+      responseCode: 550,
+      response: expect.stringContaining('5.1.1') as string,
+    });
+  }
+  expect(await mails()).toEqual([]);
+});
+
 test('it ends in order on SIGTERM, and by itself when the script that started it is gone', async () => {
   fakes.kill('SIGTERM');
   expect(await ended()).toBe(0);
@@ -98,17 +121,29 @@ test('it ends in order on SIGTERM, and by itself when the script that started it
   expect(await ended()).toBe(0);
 });
 
-test('of many mails the newest 500 are kept, and a line that a kill cut short is no mail', () => {
-  const kept = join(folder, 'many');
-  const file = openMailFile(kept);
-  const mail = (subject: string): Mail => ({ to: [], from: '', subject, text: '', html: null, at: '' });
-  for (let index = 0; index < 1_200; index += 1) file.add(mail(String(index)));
-  const subjects = (from: Mail[]): string[] => from.map((each) => each.subject);
-  expect(subjects(file.newestFirst())).toHaveLength(500);
-  expect(subjects(file.newestFirst())[0]).toBe('1199');
-  const path = join(kept, 'mails.jsonl');
+test('of many entries the newest 500 are kept, and a line that a kill cut short is none', () => {
+  const path = join(folder, 'many', 'kept.jsonl');
+  const file = openLinesFile<{ id: string }>(path);
+  for (let index = 0; index < 1_200; index += 1) file.put({ id: String(index) });
+  const ids = file.newestFirst().map(({ id }) => id);
+  expect(ids).toHaveLength(500);
+  expect([ids[0], ids[499]]).toEqual(['1199', '700']);
   expect(readFileSync(path, 'utf8').split('\n').length).toBeLessThan(1_001);
-  appendFileSync(path, '{"to":[],"from":"","sub');
-  const reopened = openMailFile(kept);
-  expect(subjects(reopened.newestFirst())).toEqual(subjects(file.newestFirst()));
+  appendFileSync(path, '{"id":"12');
+  const reopened = openLinesFile<{ id: string }>(path);
+  expect(reopened.newestFirst().map(({ id }) => id)).toEqual(ids);
+});
+
+test('what changes stays in its place, also over a restart', () => {
+  const path = join(folder, 'changed.jsonl');
+  const file = openLinesFile<{ id: string; state: string }>(path);
+  file.put({ id: 'first', state: 'ringing' });
+  file.put({ id: 'second', state: 'ringing' });
+  file.put({ id: 'first', state: 'rang out' });
+  const expected = [
+    { id: 'second', state: 'ringing' },
+    { id: 'first', state: 'rang out' },
+  ];
+  expect(file.newestFirst()).toEqual(expected);
+  expect(openLinesFile(path).newestFirst()).toEqual(expected);
 });

@@ -1,6 +1,7 @@
 import request from 'supertest';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { createApp } from '#server/app.ts';
+import { testSecrets } from '#tests/support/secrets.ts';
 import { cloneDatabase, silentLog, type TestDatabase } from '#tests/support/database.ts';
 
 let database: TestDatabase;
@@ -18,6 +19,7 @@ const appAt = (publicUrl: string) =>
     log: silentLog,
     publicUrl,
     sessionSecret: 'test-session-secret-of-32-characters',
+    ...testSecrets,
     buildId: 'build-7',
   }).app;
 

@@ -1,10 +1,10 @@
 import { randomUUID } from 'node:crypto';
 import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
-import { notificationKinds } from '#server/db/schema/notifications.ts';
+import { notificationKinds } from '#shared/notifications/kinds.ts';
 import { withTx } from '#server/db/with-tx.ts';
 import { sweepUnevaluated } from '#server/features/check-ins/sweep.ts';
 import { notify } from '#server/notifications/service.ts';
-import { mailFor } from '#server/notifications/wording.ts';
+import { mailFor } from '#server/notifications/mail-page.ts';
 import { makeClinic, makePatient, makePerson, type TestPerson } from '#tests/support/clinic.ts';
 import { cloneDatabase, silentLog, type TestDatabase } from '#tests/support/database.ts';
 import { startWeb, type TestWeb } from '#tests/support/web.ts';
@@ -76,7 +76,7 @@ describe('a notification', () => {
 describe('who is told', () => {
   it.each([
     ['same day', { symptoms: ['fall' as const] }, 'new-flag', ['lead']],
-    ['urgent', { symptoms: ['changed-shape' as const] }, 'new-flag', ['lead', 'onCall']],
+    ['urgent', { symptoms: ['changed-shape' as const] }, 'new-urgent', ['lead', 'onCall']],
     ['emergency', { danger: ['bleeding' as const] }, 'new-emergency', ['lead', 'onCall']],
   ])('of a flag for %s', async (_urgency, answers, kind, who) => {
     const onCall = await makePerson(database, clinicId, ['on-call-clinician']);

@@ -7,7 +7,7 @@ import { makeClinic, makePatient, makePerson, type TestPerson } from '#tests/sup
 import { cloneDatabase, silentLog, type TestDatabase } from '#tests/support/database.ts';
 import { startWeb, type TestBrowser, type TestWeb } from '#tests/support/web.ts';
 import { alertBody, checkInBody } from '../check-ins/bodies.ts';
-import { plantCheckIn, plantFlag } from '../records.ts';
+import { plantCheckIn, plantFlag, markTold } from '../records.ts';
 
 let database: TestDatabase;
 let web: TestWeb;
@@ -174,6 +174,7 @@ describe('a flag that was closed after the tick alone', () => {
 
   it('is open again when its finished check-in brings a new finding, and nobody holds it', async () => {
     const { phone, checkInId, flagId } = await closeAfterTick();
+    await markTold(database);
     await send(
       phone,
       '/api/check-ins',

@@ -136,8 +136,8 @@ describe('walking through a check-in', () => {
 
   test('the hold-off choices are the precautions in force but for the sling, which is asked about itself', () => {
     expect(precautionChoices(someContext)).toEqual([
-      { code: 'reaching', textKey: 'plan:precautions.reaching.did' },
-      { code: 'lifting', textKey: 'plan:precautions.lifting.did' },
+      { code: 'reaching', textKey: 'plan-details:precautions.reaching.did' },
+      { code: 'lifting', textKey: 'plan-details:precautions.lifting.did' },
     ]);
   });
 

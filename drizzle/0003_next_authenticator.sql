@@ -1,0 +1,1 @@
+ALTER TABLE "authenticators" ADD COLUMN "next_sealed_secret" text;

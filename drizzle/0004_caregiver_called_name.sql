@@ -1,0 +1,1 @@
+ALTER TABLE "caregivers" ADD COLUMN "called_name" text NOT NULL;

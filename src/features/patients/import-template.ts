@@ -1,0 +1,33 @@
+import type { importColumns } from '#shared/patients/import-contract.ts';
+
+/** What a list looks like; the first row names the columns, and the order is free. All of it is invented. */
+export const templateRow: Record<(typeof importColumns)[number], string> = {
+  name: 'Tobias Ahlgren',
+  email: 'tobias.ahlgren@mail.example',
+  chart_number: 'OL-1042',
+  birth_date: '1957-03-09',
+  phone: '555-0142',
+  address: '12 Mill Lane, Port Ellery',
+  time_zone: 'America/New_York',
+  language: 'English',
+  dominant_hand: 'right',
+  emergency_contact: 'Karin Ahlgren, 555-0143',
+  blood_thinner: 'none',
+  allergies: 'penicillin',
+  main_medicines: '',
+  equipment_at_home: '',
+  procedure: 'reverse-replacement',
+  arm: 'right',
+  surgery_date: '2026-11-20',
+  surgeon: 'Dr. Mbeki-Stone',
+  approach: 'deltopectoral',
+  subscapularis: 'repaired',
+  biceps: 'tenodesis',
+  tuberosity: '',
+  limits: '',
+  block: 'single',
+  dressing_until_day: '7',
+  lead_email: 'noor.haddad@clinic.example',
+  consent_on: '2026-11-12',
+  consent_how: 'signed',
+};
