@@ -25,4 +25,5 @@ type AnonymousActor = { kind: 'anonymous' };
  * Who a transaction acts as. Every transaction knows it, and row security reads its clinic. A person's roles are
  * read inside, from the clinic's own rows.
  */
-export type ActingAs = Omit<PersonActor, 'roles' | 'patientId' | 'caring'> | LinkActor | SystemActor | AnonymousActor;
+export type ActingAs =
+  Omit<PersonActor, 'roles' | 'patientId' | 'caring'> | LinkActor | SystemActor | AnonymousActor;
