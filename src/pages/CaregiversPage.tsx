@@ -50,7 +50,11 @@ export function CaregiversPage() {
           ) : null}
           {data ? (
             <>
-              <CaregiverList caregivers={data} onChange={(id) => setDoing({ kind: 'change', id })} />
+              <CaregiverList
+                caregivers={data}
+                onChange={(id) => setDoing({ kind: 'change', id })}
+                onEnd={() => toList()}
+              />
               <div>
                 <Button size="large" icon={UserPlus} onClick={() => setDoing({ kind: 'invite' })}>
                   {t('invite')}

@@ -30,7 +30,7 @@ export const caregiverRoutes = [
   route(endCaregiver, {
     access: { permission: 'caregiver:manage' },
     audit: 'caregiver.ended',
-    handler: ({ params, tx, actor, now }) => endByPatient(tx, actor, params.caregiverId, now),
+    handler: ({ params, tx, site, actor, now }) => endByPatient(tx, site, actor, params.caregiverId, now),
   }),
   route(clinicInviteCaregiver, {
     access: { permission: 'patient:write' },

@@ -3,10 +3,12 @@ import type { CaregiverCard, ClinicCaregiverCard } from '#shared/patients/contra
 import { Problem } from '#shared/problems/problems.ts';
 import type { PersonActor } from '../../db/actor.ts';
 import { caregivers } from '../../db/schema/caregivers.ts';
+import { invitations } from '../../db/schema/invitations.ts';
 import type { Tx } from '../../db/with-tx.ts';
 import type { Site } from '../../http/site.ts';
 import { announcePersonChange } from '../../realtime/announce.ts';
 import { auditOpening, writeAudit } from '../audit/service.ts';
+import { revokeInvitations } from '../people/inviting.ts';
 import { chartVisibleTo, patientOfClinic } from '../patients/door.ts';
 import { cardForClinic, cardForPatient, cardsForPatient } from './cards.ts';
 import { refusePast, type Limits } from './inviting.ts';
@@ -55,8 +57,38 @@ export const changeLimits = async (
   return cardForPatient(tx, grant);
 };
 
+/**
+ * Whoever has not come yet, and whom nobody else has let in, comes no more: an invitation that brought them as a
+ * caregiver opens nothing when there is nobody left to help. One as staff or as a patient stays.
+ */
+const withdrawInvitation = async (
+  tx: Tx,
+  site: Site,
+  { clinicId, personId }: CaregiverRow,
+  now: Date,
+): Promise<void> => {
+  const othersLeft = await tx.$count(
+    caregivers,
+    and(eq(caregivers.clinicId, clinicId), eq(caregivers.personId, personId), isNull(caregivers.endedAt)),
+  );
+  const [open] = await tx
+    .select({ kind: invitations.kind })
+    .from(invitations)
+    .where(
+      and(
+        eq(invitations.clinicId, clinicId),
+        eq(invitations.personId, personId),
+        isNull(invitations.acceptedAt),
+        isNull(invitations.revokedAt),
+      ),
+    );
+  if (othersLeft === 0 && open?.kind === 'caregiver') {
+    await revokeInvitations(tx, site, { clinicId, personId }, now);
+  }
+};
+
 /** Ends somebody's help at once: their next request finds nothing, and their sockets hear nothing more. */
-const end = async (tx: Tx, actor: PersonActor, grant: CaregiverRow, now: Date): Promise<void> => {
+const end = async (tx: Tx, site: Site, actor: PersonActor, grant: CaregiverRow, now: Date): Promise<void> => {
   const ended = await tx
     .update(caregivers)
     .set({ endedAt: now, endedBy: actor.personId })
@@ -66,19 +98,21 @@ const end = async (tx: Tx, actor: PersonActor, grant: CaregiverRow, now: Date): 
   if (ended.length > 0) {
     const { id, patientId } = grant;
     await writeAudit(tx, actor, { action: 'caregiver.ended', subjectId: id, patientId }, now);
+    await withdrawInvitation(tx, site, grant, now);
     await announcePersonChange(tx, grant.personId);
   }
 };
 
 export const endByPatient = async (
   tx: Tx,
+  site: Site,
   actor: PersonActor,
   caregiverId: string,
   now: Date,
 ): Promise<CaregiverCard> => {
   const of = { clinicId: actor.clinicId, patientId: ownRecord(actor), caregiverId };
   const grant = await caregiverOf(tx, of);
-  await end(tx, actor, grant, now);
+  await end(tx, site, actor, grant, now);
   return cardForPatient(tx, grant);
 };
 
@@ -91,6 +125,6 @@ export const endByClinic = async (
 ): Promise<ClinicCaregiverCard> => {
   await chartVisibleTo(tx, actor, patientId, now);
   const grant = await caregiverOf(tx, { clinicId: actor.clinicId, patientId, caregiverId });
-  await end(tx, actor, grant, now);
+  await end(tx, site, actor, grant, now);
   return cardForClinic(tx, site, grant, now);
 };

@@ -5,10 +5,14 @@ import { SectionHeading } from '#src/components/SectionHeading.tsx';
 import { CaregiverRow } from './CaregiverRow.tsx';
 import { EndDialog } from './EndDialog.tsx';
 
-type Props = { caregivers: readonly CaregiverCard[]; onChange: (caregiverId: string) => void };
+type Props = {
+  caregivers: readonly CaregiverCard[];
+  onChange: (caregiverId: string) => void;
+  onEnd: () => void;
+};
 
 /** Who helps now, and who no longer does. */
-export function CaregiverList({ caregivers, onChange }: Props) {
+export function CaregiverList({ caregivers, onChange, onEnd }: Props) {
   const { t } = useTranslation('caregivers');
   const [ending, setEnding] = useState<CaregiverCard | null>(null);
   const parts = [
@@ -30,7 +34,10 @@ export function CaregiverList({ caregivers, onChange }: Props) {
                   key={card.id}
                   card={card}
                   onChange={() => onChange(card.id)}
-                  onEnd={() => setEnding(card)}
+                  onEnd={() => {
+                    onEnd();
+                    setEnding(card);
+                  }}
                 />
               ))}
             </ul>
