@@ -56,6 +56,11 @@ const jobsDone = async () => {
   );
   expect(rows).toEqual([{ state: 'completed' }]);
 };
+/** The job only wakes the sender; what it owes stands in the rows. */
+const allSent = async () => {
+  const { rows } = await database.asSuperuser.query('select distinct state from notifications');
+  expect(rows).toEqual([{ state: 'sent' }]);
+};
 
 // One story in the order in which it happens: each part goes on where the one before has ended.
 describe('kill -9 of the worker between a commit and its evaluation', () => {
@@ -109,6 +114,7 @@ describe('kill -9 of the worker between a commit and its evaluation', () => {
       expect(rowCount).toBe(1);
       worker = await startWorkerProcess(database, mailServer.url);
       await until(15_000, jobsDone);
+      await until(15_000, allSent);
       expect([await outcomeFor(checkingIn), await outcomeFor(alerting)]).toEqual([once, once]);
       expect(mailServer.mails).toHaveLength(2);
     },
