@@ -1,5 +1,6 @@
 import { afterAll, beforeAll, expect, it } from 'vitest';
 import { cloneDatabase, type TestDatabase } from '#tests/support/database.ts';
+import { testSecrets, testVapidPrivateKey } from '#tests/support/secrets.ts';
 import { startProcess } from './processes.ts';
 
 let database: TestDatabase;
@@ -21,6 +22,10 @@ it.each([
     const started = startProcess(entry, {
       APP_DATABASE_URL: database.urls.owner,
       GATE_DATABASE_URL: database.urls.gate,
+      TOKEN_SECRET: testSecrets.tokenSecret,
+      SEAL_SECRET: testSecrets.sealSecret,
+      VAPID_PUBLIC_KEY: testSecrets.vapidPublicKey,
+      VAPID_PRIVATE_KEY: testVapidPrivateKey,
       ...env,
     });
     expect(await started.exited).not.toBe(0);

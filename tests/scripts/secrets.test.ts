@@ -31,7 +31,11 @@ test('secrets are made once, each its own, and readable by their user alone', as
   expect(statSync(path).mode & 0o777).toBe(0o600);
   expect(new Set(Object.values(made)).size).toBe(Object.keys(made).length);
   // 256 bits each, as OWASP asks of session secrets at least 128 (CP).
-  for (const secret of Object.values(made)) expect(secret).toMatch(/^[0-9a-f]{64}$/);
+  const { vapidPublicKey, vapidPrivateKey, ...random } = made;
+  for (const secret of Object.values(random)) expect(secret).toMatch(/^[0-9a-f]{64}$/);
+  // RFC 8292, section 3.2: an uncompressed point of P-256, which is 65 bytes; its private key is 32.
+  expect(Buffer.from(vapidPublicKey!, 'base64url')).toHaveLength(65);
+  expect(Buffer.from(vapidPrivateKey!, 'base64url')).toHaveLength(32);
   expect(await readSecrets()).toEqual(made);
 });
 

@@ -31,6 +31,7 @@ const hardWords = [
   'america',
   'another',
   'computer',
+  'connection',
   'emergency',
   'espalier',
   'invitation',
