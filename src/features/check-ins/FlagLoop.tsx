@@ -28,7 +28,10 @@ export function FlagLoop({ flag, clinic, nowMs }: Props) {
         </p>
         {seenBy === null && isClosed(clinic, nowMs) && clinic.opensAt !== null ? (
           <p>
-            <a href={telephoneHref(clinic.onCallNumber)} className="underline underline-offset-4">
+            <a
+              href={telephoneHref(clinic.onCallNumber)}
+              className="inline-block py-2 underline underline-offset-4"
+            >
               {t('loop.closed', { time: formatMoment(clinic.opensAt, nowMs) })}{' '}
               <span className="whitespace-nowrap">{clinic.onCallNumber}</span>
             </a>
