@@ -1,11 +1,11 @@
 import { useState } from 'react';
 import type { ReactNode } from 'react';
 import { reasonField } from '#shared/accounts/fields.ts';
-import { Button } from '#src/components/Button.tsx';
-import { Dialog } from '#src/components/Dialog.tsx';
+
 import { TextArea } from '#src/components/TextArea.tsx';
 import { useBusyWhile } from '#src/lib/busy.ts';
 import { ApiProblem } from '#src/lib/problem.ts';
+import { FormDialog } from './FormDialog.tsx';
 import { Refused } from './Refused.tsx';
 
 type Props = {
@@ -38,45 +38,28 @@ export function ReasonDialog(props: Props) {
     if (checked.success && !act.busy) act.onSubmit(checked.data);
   }
   return (
-    <Dialog
-      open
-      onOpenChange={(open) => {
-        if (!open) onClose();
-      }}
+    <FormDialog
       title={title}
       description={consequence}
-      closeLabel="Close without saving"
-      footer={
-        <>
-          <Button variant="outline" onClick={onClose}>
-            Cancel
-          </Button>
-          <Button type="submit" form="reason-form" variant={danger ? 'danger' : 'primary'} busy={act.busy}>
-            {submitLabel}
-          </Button>
-        </>
-      }
+      submitLabel={submitLabel}
+      danger={danger ?? false}
+      busy={act.busy}
+      onSubmit={(event) => {
+        event.preventDefault();
+        submit();
+      }}
+      onClose={onClose}
     >
-      <form
-        id="reason-form"
-        noValidate
-        className="grid gap-5"
-        onSubmit={(event) => {
-          event.preventDefault();
-          submit();
-        }}
-      >
-        {children}
-        <TextArea
-          label={reasonLabel}
-          value={reason}
-          onChange={({ target }) => setReason(target.value)}
-          error={wrong ?? refused}
-          rows={2}
-          dir="auto"
-        />
-        <Refused error={act.error} />
-      </form>
-    </Dialog>
+      {children}
+      <TextArea
+        label={reasonLabel}
+        value={reason}
+        onChange={({ target }) => setReason(target.value)}
+        error={wrong ?? refused}
+        rows={2}
+        dir="auto"
+      />
+      <Refused error={act.error} />
+    </FormDialog>
   );
 }

@@ -4,9 +4,8 @@ import type { z } from 'zod';
 import { clinicInviteCaregiverBody } from '#shared/caregivers/contract.ts';
 import type { ClinicCaregiverCard } from '#shared/patients/contract.ts';
 import { Refused } from '#src/app/Refused.tsx';
-import { Button } from '#src/components/Button.tsx';
 import { Checkbox } from '#src/components/Checkbox.tsx';
-import { Dialog } from '#src/components/Dialog.tsx';
+import { FormDialog } from '#src/app/FormDialog.tsx';
 import { RadioTiles } from '#src/components/RadioTiles.tsx';
 import { TextArea } from '#src/components/TextArea.tsx';
 import { TextField } from '#src/components/TextField.tsx';
@@ -57,89 +56,71 @@ export function InviteCaregiverForm({ patientId, patientName, onClose, onInvited
     });
   }
   return (
-    <Dialog
-      open
-      onOpenChange={(open) => {
-        if (!open) onClose();
-      }}
+    <FormDialog
       title="Invite a caregiver"
       description={`They see the record of ${patientName}, and everything they do there is marked as theirs.`}
-      closeLabel="Close without saving"
-      footer={
-        <>
-          <Button variant="outline" onClick={onClose}>
-            Cancel
-          </Button>
-          <Button type="submit" form="caregiver-form" busy={invite.isPending}>
-            Invite
-          </Button>
-        </>
-      }
+      submitLabel="Invite"
+      busy={invite.isPending}
+      onSubmit={(event) => void handleSubmit(submit)(event)}
+      onClose={onClose}
     >
-      <form
-        id="caregiver-form"
-        noValidate
-        className="grid gap-5"
-        onSubmit={(event) => void handleSubmit(submit)(event)}
-      >
-        <TextField
-          {...register('name')}
-          label="Name"
-          dir="auto"
-          autoComplete="off"
-          error={errors.name?.message}
-        />
-        <TextField
-          {...register('email')}
-          type="email"
-          label="E-mail"
-          hint="Their own, not the patient’s."
-          autoComplete="off"
-          error={errors.email?.message}
-        />
-        <TextField
-          {...register('relationship')}
-          label="Who they are to the patient"
-          hint="For example daughter, neighbour."
-          autoComplete="off"
-          error={errors.relationship?.message}
-        />
-        <fieldset className="min-w-0">
-          <legend className="font-bold">Besides seeing the record, they may</legend>
-          <Checkbox {...register('mayCheckIn')} label="answer check-ins for the patient" />
-          <Checkbox {...register('mayMessage')} label="write messages to the clinic" />
-        </fieldset>
-        <TextField
-          {...register('until', { setValueAs: (date: string | null) => (date === '' ? null : date) })}
-          type="date"
-          label="Until"
-          hint="The last day. Empty: until somebody ends it."
-          error={errors.until?.message}
-        />
-        <TextArea
-          {...register('consent')}
-          label="How and when did the patient agree?"
-          rows={2}
-          dir="auto"
-          error={errors.consent?.message}
-        />
-        <Controller
-          control={control}
-          name="byEmail"
-          render={({ field, fieldState: { error } }) => (
-            <RadioTiles
-              legend="How are they invited?"
-              name={field.name}
-              options={ways}
-              columns={2}
-              value={field.value === undefined ? null : field.value ? 'email' : 'letter'}
-              onChange={(way) => field.onChange(way === 'email')}
-              error={error ? 'Choose how they are invited.' : undefined}
-            />
-          )}
-        />
-        <Refused error={invite.error} />
-      </form>
-    </Dialog>
+      <TextField
+        {...register('name')}
+        label="Name"
+        dir="auto"
+        autoComplete="off"
+        error={errors.name?.message}
+      />
+      <TextField
+        {...register('email')}
+        type="email"
+        label="E-mail"
+        hint="Their own, not the patient’s."
+        autoComplete="off"
+        error={errors.email?.message}
+      />
+      <TextField
+        {...register('relationship')}
+        label="Who they are to the patient"
+        hint="For example daughter, neighbour."
+        autoComplete="off"
+        error={errors.relationship?.message}
+      />
+      <fieldset className="min-w-0">
+        <legend className="font-bold">Besides seeing the record, they may</legend>
+        <Checkbox {...register('mayCheckIn')} label="answer check-ins for the patient" />
+        <Checkbox {...register('mayMessage')} label="write messages to the clinic" />
+      </fieldset>
+      <TextField
+        {...register('until', { setValueAs: (date: string | null) => (date === '' ? null : date) })}
+        type="date"
+        label="Until"
+        hint="The last day. Empty: until somebody ends it."
+        error={errors.until?.message}
+      />
+      <TextArea
+        {...register('consent')}
+        label="How and when did the patient agree?"
+        rows={2}
+        dir="auto"
+        error={errors.consent?.message}
+      />
+      <Controller
+        control={control}
+        name="byEmail"
+        render={({ field, fieldState: { error } }) => (
+          <RadioTiles
+            legend="How are they invited?"
+            name={field.name}
+            options={ways}
+            columns={2}
+            value={field.value === undefined ? null : field.value ? 'email' : 'letter'}
+            onChange={(way) => field.onChange(way === 'email')}
+            error={error ? 'Choose how they are invited.' : undefined}
+          />
+        )}
+      />
+      <Refused error={invite.error} />
+    </FormDialog>
   );
 }

@@ -5,9 +5,8 @@ import { inviteStaffBody } from '#shared/people/contract.ts';
 import type { StaffPerson } from '#shared/people/contract.ts';
 import { isGuardedRole, staffRoles } from '#shared/people/two-person-acts.ts';
 import { Refused } from '#src/app/Refused.tsx';
-import { Button } from '#src/components/Button.tsx';
 import { CheckTile } from '#src/components/CheckTile.tsx';
-import { Dialog } from '#src/components/Dialog.tsx';
+import { FormDialog } from '#src/app/FormDialog.tsx';
 import { TextArea } from '#src/components/TextArea.tsx';
 import { TextField } from '#src/components/TextField.tsx';
 import { useBusyWhile } from '#src/lib/busy.ts';
@@ -47,101 +46,81 @@ export function InviteStaffForm({ onClose, onInvited }: Props) {
     invite.mutate(body, { onSuccess: onInvited, onError: (error) => showFieldErrors(error, setError) });
   }
   return (
-    <Dialog
-      open
-      onOpenChange={(open) => {
-        if (!open) onClose();
-      }}
+    <FormDialog
       title="Invite somebody"
       description="An invitation goes to the e-mail address. It can be used for 72 hours."
-      closeLabel="Close without saving"
-      footer={
-        <>
-          <Button variant="outline" onClick={onClose}>
-            Cancel
-          </Button>
-          <Button type="submit" form="invite-staff" busy={invite.isPending}>
-            Invite
-          </Button>
-        </>
-      }
+      submitLabel="Invite"
+      busy={invite.isPending}
+      onSubmit={(event) => void handleSubmit(submit)(event)}
+      onClose={onClose}
     >
-      <form
-        id="invite-staff"
-        noValidate
-        className="grid gap-5"
-        onSubmit={(event) => void handleSubmit(submit)(event)}
-      >
-        <TextField
-          {...register('name')}
-          label="Name"
+      <TextField
+        {...register('name')}
+        label="Name"
+        dir="auto"
+        autoComplete="off"
+        error={errors.name?.message}
+      />
+      <TextField
+        {...register('credential', emptyIsNothing)}
+        label="Title"
+        hint="Such as PT, DPT. Empty where there is none."
+        autoComplete="off"
+        error={errors.credential?.message}
+      />
+      <TextField
+        {...register('email')}
+        type="email"
+        label="E-mail"
+        autoComplete="off"
+        error={errors.email?.message}
+      />
+      <TextField
+        {...register('phone', emptyIsNothing)}
+        type="tel"
+        label="Telephone"
+        hint="For pages by SMS and by call. It can be added later."
+        autoComplete="off"
+        error={errors.phone?.message}
+      />
+      <Controller
+        control={control}
+        name="roles"
+        render={({ field, fieldState: { error } }) => (
+          <fieldset className="grid min-w-0 gap-2" aria-describedby={error ? 'roles-error' : undefined}>
+            <legend className="mb-2 font-bold">Roles</legend>
+            {staffRoles.map((role) => (
+              <CheckTile
+                key={role}
+                label={roleWords[role]}
+                detail={roleDetails[role]}
+                checked={field.value.includes(role)}
+                onChange={({ target }) =>
+                  field.onChange(
+                    target.checked ? [...field.value, role] : field.value.filter((chosen) => chosen !== role),
+                  )
+                }
+              />
+            ))}
+            {error ? (
+              <p id="roles-error" className="text-sm font-bold text-clay">
+                {error.message}
+              </p>
+            ) : null}
+          </fieldset>
+        )}
+      />
+      {guarded.length > 0 ? (
+        <TextArea
+          {...register('reason', { shouldUnregister: true })}
+          label={`Why ${guarded.map((role) => roleWords[role]).join(' and ')}?`}
+          hint="A second person reads this and confirms. Until then the role is not given."
+          rows={2}
           dir="auto"
-          autoComplete="off"
-          error={errors.name?.message}
+          error={errors.reason?.message}
         />
-        <TextField
-          {...register('credential', emptyIsNothing)}
-          label="Title"
-          hint="Such as PT, DPT. Empty where there is none."
-          autoComplete="off"
-          error={errors.credential?.message}
-        />
-        <TextField
-          {...register('email')}
-          type="email"
-          label="E-mail"
-          autoComplete="off"
-          error={errors.email?.message}
-        />
-        <TextField
-          {...register('phone', emptyIsNothing)}
-          type="tel"
-          label="Telephone"
-          hint="For pages by SMS and by call. It can be added later."
-          autoComplete="off"
-          error={errors.phone?.message}
-        />
-        <Controller
-          control={control}
-          name="roles"
-          render={({ field, fieldState: { error } }) => (
-            <fieldset className="grid min-w-0 gap-2" aria-describedby={error ? 'roles-error' : undefined}>
-              <legend className="mb-2 font-bold">Roles</legend>
-              {staffRoles.map((role) => (
-                <CheckTile
-                  key={role}
-                  label={roleWords[role]}
-                  detail={roleDetails[role]}
-                  checked={field.value.includes(role)}
-                  onChange={({ target }) =>
-                    field.onChange(
-                      target.checked
-                        ? [...field.value, role]
-                        : field.value.filter((chosen) => chosen !== role),
-                    )
-                  }
-                />
-              ))}
-              {error ? (
-                <p id="roles-error" className="text-sm font-bold text-clay">
-                  {error.message}
-                </p>
-              ) : null}
-            </fieldset>
-          )}
-        />
-        {guarded.length > 0 ? (
-          <TextArea
-            {...register('reason', { shouldUnregister: true })}
-            label={`Why ${guarded.map((role) => roleWords[role]).join(' and ')}?`}
-            hint="A second person reads this and confirms. Until then the role is not given."
-            rows={2}
-            dir="auto"
-            error={errors.reason?.message}
-          />
-        ) : null}
-        <Refused error={invite.error} />
-      </form>
-    </Dialog>
+      ) : null}
+      <Refused error={invite.error} />
+    </FormDialog>
   );
 }

@@ -5,8 +5,7 @@ import type { z } from 'zod';
 import { closeFlagBody } from '#shared/triage/contract.ts';
 import type { FlagCase } from '#shared/triage/contract.ts';
 import { outcomeNeeds, outcomes } from '#shared/triage/lifecycle.ts';
-import { Button } from '#src/components/Button.tsx';
-import { Dialog } from '#src/components/Dialog.tsx';
+import { FormDialog } from '#src/app/FormDialog.tsx';
 import { RadioTiles } from '#src/components/RadioTiles.tsx';
 import { TextArea } from '#src/components/TextArea.tsx';
 import { useBusyWhile } from '#src/lib/busy.ts';
@@ -67,72 +66,56 @@ export function CloseFlagDialog({ flag, onOpenChange, onClosed, notice }: Props)
   const isFieldProblem = close.error instanceof ApiProblem && close.error.fieldErrors.length > 0;
 
   return (
-    <Dialog
-      open
-      onOpenChange={onOpenChange}
+    <FormDialog
       title={`Close the flag of ${flag.patient.name}`}
       description="It leaves the round. Something new about this person comes back as a flag."
-      closeLabel="Close without saving"
-      footer={
-        <>
-          <Button variant="outline" onClick={() => onOpenChange(false)}>
-            Cancel
-          </Button>
-          <Button type="submit" form="close-flag" busy={close.isPending}>
-            Close the flag
-          </Button>
-        </>
-      }
+      submitLabel="Close the flag"
+      busy={close.isPending}
+      onSubmit={(event) => {
+        const form = event.currentTarget;
+        void handleSubmit(submit, (wrong) => focusFirst(form, wrong))(event);
+      }}
+      onClose={() => onOpenChange(false)}
     >
-      <form
-        id="close-flag"
-        noValidate
-        className="grid gap-5"
-        onSubmit={(event) => {
-          const form = event.currentTarget;
-          void handleSubmit(submit, (wrong) => focusFirst(form, wrong))(event);
-        }}
-      >
-        <Controller
-          control={control}
-          name="outcome"
-          render={({ field }) => (
-            <RadioTiles
-              legend="Outcome"
-              name={field.name}
-              options={outcomeOptions}
-              columns={2}
-              value={field.value ?? null}
-              onChange={field.onChange}
-              error={errors.outcome?.message}
-            />
-          )}
-        />
-        <Controller
-          control={control}
-          name="worthRaising"
-          render={({ field }) => (
-            <RadioTiles
-              legend="Was it worth raising?"
-              name={field.name}
-              options={worthOptions}
-              columns={2}
-              value={field.value ?? null}
-              onChange={field.onChange}
-              error={errors.worthRaising?.message}
-            />
-          )}
-        />
-        <TextArea
-          {...register('note')}
-          label="Note for the record"
-          hint={(outcome && outcomeNeeds[outcome]) ?? 'If there is more to say.'}
-          error={errors.note?.message}
-          dir="auto"
-        />
-        {close.isPending ? null : notice}
-        {isFieldProblem ? null : <RefusalBanner error={close.error} kept="What you chose is still here." />}
-      </form>
-    </Dialog>
+      <Controller
+        control={control}
+        name="outcome"
+        render={({ field }) => (
+          <RadioTiles
+            legend="Outcome"
+            name={field.name}
+            options={outcomeOptions}
+            columns={2}
+            value={field.value ?? null}
+            onChange={field.onChange}
+            error={errors.outcome?.message}
+          />
+        )}
+      />
+      <Controller
+        control={control}
+        name="worthRaising"
+        render={({ field }) => (
+          <RadioTiles
+            legend="Was it worth raising?"
+            name={field.name}
+            options={worthOptions}
+            columns={2}
+            value={field.value ?? null}
+            onChange={field.onChange}
+            error={errors.worthRaising?.message}
+          />
+        )}
+      />
+      <TextArea
+        {...register('note')}
+        label="Note for the record"
+        hint={(outcome && outcomeNeeds[outcome]) ?? 'If there is more to say.'}
+        error={errors.note?.message}
+        dir="auto"
+      />
+      {close.isPending ? null : notice}
+      {isFieldProblem ? null : <RefusalBanner error={close.error} kept="What you chose is still here." />}
+    </FormDialog>
   );
 }
